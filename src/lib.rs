@@ -1,0 +1,6 @@
+//! modewright: stability, mode sizes and tolerances of lasers and optical cavities.
+
+pub mod diagnostic;
+pub mod numeric;
+pub mod optics;
+pub mod quantity;

@@ -1,0 +1,7 @@
+//! Numerics without optics: the number type the physics is written over, and root finding.
+
+mod dual;
+mod real;
+
+pub use dual::Dual;
+pub use real::Real;

@@ -1,0 +1,1 @@
+//! Rays and beams through single optical elements, in plain SI numbers.

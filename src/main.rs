@@ -1,1 +1,3 @@
+//! The `modewright` command.
+
 fn main() {}

@@ -176,6 +176,9 @@ impl<T: Real> Real for Dual<T> {
         let z = self.value;
         self.chain(z.sinc_root(), sinc_root_slope(z))
     }
+    fn floor(self) -> Self {
+        Dual::fixed(self.value.floor())
+    }
     fn less(self, other: Self) -> Self::Mask {
         self.value.less(other.value)
     }

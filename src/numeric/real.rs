@@ -51,6 +51,8 @@ pub trait Real:
     fn cos_root(self) -> Self;
     /// sin √z / √z as the entire function it is: 1 at zero, sinh √−z / √−z below.
     fn sinc_root(self) -> Self;
+    /// The largest whole number not above this one; its derivative counts as zero.
+    fn floor(self) -> Self;
     /// Whether `self < other`.
     fn less(self, other: Self) -> Self::Mask;
     /// `yes` where the mask holds, `no` elsewhere.
@@ -134,6 +136,9 @@ impl Real for f64 {
             let root = (-self).sqrt();
             root.sinh() / root
         }
+    }
+    fn floor(self) -> f64 {
+        f64::floor(self)
     }
     fn less(self, other: f64) -> bool {
         self < other

@@ -1,0 +1,103 @@
+//! Ray matrices in reduced coordinates, so that every determinant is 1.
+//!
+//! A ray at a plane is (x, p): its height and p = n·θ, the optical direction cosine in a medium
+//! of index n. Every element, refraction included, is then a real matrix of determinant 1,
+//!
+//! ```text
+//!     (x₂)   (A  B) (x₁)
+//!     (p₂) = (C  D) (p₁),      AD − BC = 1.
+//! ```
+//!
+//! A flip of the tangential axis at a reflection is left out here and counted by the cavity.
+//! Source: Kogelnik & Li, Appl. Opt. 5, 1550 (1966); reduced angles as in Siegman, *Lasers* (1986).
+
+use crate::numeric::Real;
+
+/// The ray matrix of an element in one plane, in reduced coordinates.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct RayMatrix<T> {
+    /// Height from height; no unit.
+    pub a: T,
+    /// Height from reduced angle, in metres.
+    pub b: T,
+    /// Reduced angle from height, in 1/m; the negative of the dioptric power.
+    pub c: T,
+    /// Reduced angle from reduced angle; no unit.
+    pub d: T,
+}
+
+impl<T: Real> RayMatrix<T> {
+    /// The element that changes nothing.
+    pub fn identity() -> Self {
+        Self::kick(T::constant(0.0))
+    }
+
+    /// Propagation over a reduced length L/n, in metres.
+    pub fn propagation(reduced_length: T) -> Self {
+        RayMatrix {
+            a: T::constant(1.0),
+            b: reduced_length,
+            c: T::constant(0.0),
+            d: T::constant(1.0),
+        }
+    }
+
+    /// A thin element that adds `c`·x to the reduced angle (`c` in 1/m, negative where it focuses).
+    pub fn kick(c: T) -> Self {
+        RayMatrix {
+            a: T::constant(1.0),
+            b: T::constant(0.0),
+            c,
+            d: T::constant(1.0),
+        }
+    }
+
+    /// This element followed by `next`.
+    pub fn then(self, next: Self) -> Self {
+        RayMatrix {
+            a: next.a * self.a + next.b * self.c,
+            b: next.a * self.b + next.b * self.d,
+            c: next.c * self.a + next.d * self.c,
+            d: next.c * self.b + next.d * self.d,
+        }
+    }
+
+    /// The same element met from its other side.
+    pub fn reversed(self) -> Self {
+        RayMatrix {
+            a: self.d,
+            d: self.a,
+            ..self
+        }
+    }
+
+    /// The element that undoes this one.
+    pub fn inverse(self) -> Self {
+        RayMatrix {
+            a: self.d,
+            b: -self.b,
+            c: -self.c,
+            d: self.a,
+        }
+    }
+
+    /// Every entry with the other sign: a flip of the axis.
+    pub fn flipped(self) -> Self {
+        RayMatrix {
+            a: -self.a,
+            b: -self.b,
+            c: -self.c,
+            d: -self.d,
+        }
+    }
+
+    /// The determinant, 1 for every element.
+    pub fn determinant(self) -> T {
+        self.a * self.d - self.b * self.c
+    }
+
+    /// Half the trace, (A + D)/2.
+    pub fn half_trace(self) -> T {
+        (self.a + self.d) * 0.5
+    }
+}

@@ -1,5 +1,7 @@
 //! modewright: stability, mode sizes and tolerances of lasers and optical cavities.
 
+pub mod analysis;
+pub mod cavity;
 pub mod diagnostic;
 pub mod numeric;
 pub mod optics;

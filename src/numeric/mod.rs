@@ -2,6 +2,7 @@
 
 mod dual;
 mod real;
+pub mod roots;
 
 pub use dual::Dual;
 pub use real::Real;

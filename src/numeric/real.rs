@@ -8,7 +8,7 @@
 //! guiding to antiguiding without a special case.
 
 use std::fmt::Debug;
-use std::ops::{Add, Div, Mul, Neg, Sub};
+use std::ops::{Add, BitAnd, Div, Mul, Neg, Sub};
 
 /// A real number, or several of them evaluated alike.
 pub trait Real:
@@ -29,7 +29,7 @@ pub trait Real:
     + Div<f64, Output = Self>
 {
     /// The outcome of a comparison: `bool` for one number, one flag a lane for several.
-    type Mask: Copy;
+    type Mask: Copy + Debug + BitAnd<Output = Self::Mask>;
 
     /// A number that does not vary.
     fn constant(value: f64) -> Self;

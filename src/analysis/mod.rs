@@ -1,0 +1,9 @@
+//! What a cavity does: plain data in, plain documented results out.
+
+pub mod clipping;
+pub mod eigenmode;
+pub mod envelope;
+pub mod leaving;
+pub mod lengths;
+pub mod measures;
+pub mod ranges;

@@ -1,0 +1,244 @@
+//! One walk along the path: every part as the ray matrices a beam meets, in order.
+//!
+//! The path is walked one way. A ring starts just behind its first part and ends behind it again.
+//! A standing cavity starts and ends in the middle of an end mirror's reflection, each end
+//! contributing half its power, C = −n/R; the way back is the same walk reversed.
+//! Flips of the axes are left out; [`Cavity::flips`] counts them.
+
+use super::Cavity;
+use super::part::{Element, Incidence, Mirror, Slab, ThermalLens, ThermalPlace};
+use crate::numeric::Real;
+use crate::optics::PerPlane;
+use crate::optics::element::duct::Stretch;
+use crate::optics::element::mirror;
+use crate::optics::element::surface::Crossing;
+use crate::optics::ray::RayMatrix;
+
+/// What a leg of the walk is within its part.
+#[derive(Clone, Copy, Debug)]
+pub enum Piece<T> {
+    /// A thin element: a lens, an opening, a given matrix, a lumped thermal lens.
+    Thin,
+    /// A mirror's reflection, or half of it at the end of a standing cavity.
+    Reflection,
+    /// A face of a slab.
+    Face(End),
+    /// A stretch through a medium, in either plane; lengths and index are the same in both.
+    Stretch(PerPlane<Stretch<T>>),
+}
+
+/// Which face of a slab.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum End {
+    /// The one through which the walk enters.
+    Entrance,
+    /// The one through which it leaves.
+    Exit,
+}
+
+/// One leg of the walk.
+#[derive(Clone, Copy, Debug)]
+pub struct Leg<T> {
+    /// Index of the part it belongs to.
+    pub part: usize,
+    /// What it is.
+    pub piece: Piece<T>,
+    /// Ray matrices in the file's planes, flips left out.
+    pub matrix: PerPlane<RayMatrix<T>>,
+}
+
+impl<T: Real> Leg<T> {
+    /// Length along the beam, in metres; zero for what is thin.
+    pub fn length(&self) -> T {
+        match &self.piece {
+            Piece::Stretch(s) => s.tangential.length,
+            _ => T::constant(0.0),
+        }
+    }
+}
+
+impl Cavity {
+    /// Walks the path once, one way, with the given values in the address book's slots.
+    pub fn walk<T: Real>(&self, values: &[T], mut visit: impl FnMut(Leg<T>)) {
+        let last = self.parts.len() - 1;
+        if self.is_ring() {
+            for part in (1..=last).chain([0]) {
+                self.walk_part(part, 1.0, values, &mut visit);
+            }
+        } else {
+            for part in 0..=last {
+                let share = if part == 0 || part == last { 0.5 } else { 1.0 };
+                self.walk_part(part, share, values, &mut visit);
+            }
+        }
+    }
+
+    /// The half reflection with which the walk of a standing cavity starts.
+    pub(crate) fn walk_first<T: Real>(&self, values: &[T], mut visit: impl FnMut(Leg<T>)) {
+        self.walk_part(0, 0.5, values, &mut visit);
+    }
+
+    /// The product of all matrices of the walk.
+    pub fn one_way<T: Real>(&self, values: &[T]) -> PerPlane<RayMatrix<T>> {
+        let mut product = PerPlane::both(RayMatrix::identity());
+        self.walk(values, |leg| {
+            product = product.zip(leg.matrix, RayMatrix::then);
+        });
+        product
+    }
+
+    /// The legs of one part; `share` is the part of a mirror's power that counts.
+    fn walk_part<T: Real>(
+        &self,
+        index: usize,
+        share: f64,
+        values: &[T],
+        visit: &mut impl FnMut(Leg<T>),
+    ) {
+        let part = &self.parts[index];
+        let mut leg = |piece, matrix| {
+            visit(Leg {
+                part: index,
+                piece,
+                matrix,
+            });
+        };
+        match &part.element {
+            Element::Mirror(mirror) => {
+                let power = mirror_power(mirror, part.swapped, part.before.phase(values), values);
+                let kick = power.map(|p| RayMatrix::kick(p * -share));
+                leg(Piece::Reflection, kick);
+            }
+            Element::Gap { length, medium } => {
+                let stretch = Stretch::uniform(length.of(values), medium.phase(values));
+                let propagation = RayMatrix::propagation(stretch.length / stretch.index);
+                leg(
+                    Piece::Stretch(PerPlane::both(stretch)),
+                    PerPlane::both(propagation),
+                );
+            }
+            Element::Lens { power } => {
+                let kick = power.map(|slot| RayMatrix::kick(-slot.of(values)));
+                leg(Piece::Thin, kick);
+            }
+            Element::Slab(slab) => walk_slab(
+                slab,
+                part.swapped,
+                part.before.phase(values),
+                values,
+                &mut leg,
+            ),
+            Element::Duct {
+                length,
+                index,
+                strength,
+                antiguiding,
+            } => {
+                let sign = if *antiguiding { -1.0 } else { 1.0 };
+                let stretch = strength.map(|slot| Stretch {
+                    length: length.of(values),
+                    index: index.phase(values),
+                    strength_squared: slot.of(values).squared() * sign,
+                });
+                leg(Piece::Stretch(stretch), stretch.map(Stretch::matrix));
+            }
+            Element::Aperture => leg(Piece::Thin, PerPlane::both(RayMatrix::identity())),
+            Element::Matrix { entries, .. } => {
+                let matrix = entries.map(|[a, b, c, d]| RayMatrix {
+                    a: T::constant(a),
+                    b: T::constant(b),
+                    c: T::constant(c),
+                    d: T::constant(d),
+                });
+                leg(Piece::Thin, matrix);
+            }
+        }
+    }
+}
+
+/// Dioptric power of a mirror in the file's planes.
+fn mirror_power<T: Real>(mirror: &Mirror, swapped: bool, index: T, values: &[T]) -> PerPlane<T> {
+    let own = |pair: PerPlane<T>| if swapped { pair.swapped() } else { pair };
+    let curvature = own(mirror.curvature.map(|slot| slot.of(values)));
+    own(mirror::power(
+        curvature,
+        mirror.incidence.of(values).cos(),
+        index,
+    ))
+}
+
+/// How the beam crosses a slab's entrance face, from a medium of index `outside`.
+pub(crate) fn slab_crossing<T: Real>(slab: &Slab, outside: T, values: &[T]) -> Crossing<T> {
+    let inside = slab.index.phase(values);
+    match slab.incidence {
+        Incidence::Brewster => Crossing::at_brewster(outside, inside),
+        Incidence::Angle(slot) => Crossing::at_incidence(outside, inside, slot.of(values)),
+    }
+}
+
+fn walk_slab<T: Real>(
+    slab: &Slab,
+    swapped: bool,
+    outside: T,
+    values: &[T],
+    leg: &mut impl FnMut(Piece<T>, PerPlane<RayMatrix<T>>),
+) {
+    let own = |pair: PerPlane<RayMatrix<T>>| if swapped { pair.swapped() } else { pair };
+    let crossing = slab_crossing(slab, outside, values);
+    let path = slab.thickness.of(values) / crossing.cos_to;
+    let uniform = Stretch::uniform(path, crossing.index_to);
+
+    // Convex from outside: the entrance has its centre on the far side, the exit on the near side.
+    let entrance = PerPlane::both(slab.entrance.of(values));
+    leg(Piece::Face(End::Entrance), own(crossing.matrices(entrance)));
+
+    let mut straight = |stretch: PerPlane<Stretch<T>>| {
+        leg(Piece::Stretch(stretch), stretch.map(Stretch::matrix));
+    };
+    match &slab.thermal {
+        None => straight(PerPlane::both(uniform)),
+        Some(lens) => {
+            let power = thermal_power(lens, values);
+            let kick = power.map(|p| RayMatrix::kick(-p));
+            let whole = PerPlane::both(uniform);
+            let half = PerPlane::both(uniform.part(0.5));
+            match lens.place {
+                ThermalPlace::Spread => straight(power.map(|p| Stretch {
+                    strength_squared: p / (crossing.index_to * path),
+                    ..uniform
+                })),
+                ThermalPlace::Entrance => {
+                    leg(Piece::Thin, kick);
+                    leg(Piece::Stretch(whole), whole.map(Stretch::matrix));
+                }
+                ThermalPlace::Middle => {
+                    straight(half);
+                    leg(Piece::Thin, kick);
+                    leg(Piece::Stretch(half), half.map(Stretch::matrix));
+                }
+                ThermalPlace::Exit => {
+                    straight(whole);
+                    leg(Piece::Thin, kick);
+                }
+            }
+        }
+    }
+    let exit = PerPlane::both(-slab.exit.of(values));
+    leg(
+        Piece::Face(End::Exit),
+        own(crossing.reversed().matrices(exit)),
+    );
+}
+
+/// Power of a thermal lens in the file's planes, in 1/m.
+fn thermal_power<T: Real>(lens: &ThermalLens, values: &[T]) -> PerPlane<T> {
+    let zero = PerPlane::both(T::constant(0.0));
+    let fixed = lens
+        .power
+        .map_or(zero, |power| power.map(|slot| slot.of(values)));
+    let pump = Cavity::PUMP.of(values);
+    let pumped = lens
+        .power_per_watt
+        .map_or(zero, |power| power.map(|slot| slot.of(values) * pump));
+    fixed.zip(pumped, |a, b| a + b)
+}

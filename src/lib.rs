@@ -3,6 +3,7 @@
 pub mod analysis;
 pub mod cavity;
 pub mod diagnostic;
+pub mod file;
 pub mod numeric;
 pub mod optics;
 pub mod quantity;

@@ -1,0 +1,267 @@
+//! The fields of one table of a file, read by key: from the command line where it says something
+//! of that address, from the table, or from the defaults for its kind.
+
+use std::ops::Range;
+
+use toml::de::{DeTable, DeValue};
+
+use super::context::{Context, Found, Raw, in_order, kind_of, nearest};
+use crate::cavity::{Origin, Slot};
+use crate::diagnostic::Place;
+use crate::quantity::{Kind, Quantity, Spread, Value};
+
+/// Keys that say the same thing in different ways: a default for one of them gives way where the
+/// part names another.
+const ALTERNATIVES: [&[&str]; 8] = [
+    &["fold", "fold_plane"],
+    &["roc", "roc_tangential", "roc_sagittal"],
+    &["focal", "focal_tangential", "focal_sagittal"],
+    &["diameter", "width", "height"],
+    &["strength", "strength_tangential", "strength_sagittal"],
+    &["thermal", "thermal_tangential", "thermal_sagittal"],
+    &["material", "axis", "index", "group_index"],
+    &[
+        "reflectance",
+        "reflectance_s",
+        "reflectance_p",
+        "transmission",
+        "transmission_s",
+        "transmission_p",
+        "loss",
+        "loss_s",
+        "loss_p",
+    ],
+];
+
+/// One table, and who it is.
+pub(super) struct Fields<'c, 't> {
+    pub context: &'c Context<'t>,
+    table: &'t DeTable<'t>,
+    /// The whole table's place.
+    pub place: Place,
+    /// What comes before the dot in its addresses; empty at the top level.
+    pub owner: String,
+    /// Index of the part it describes.
+    pub part: Option<usize>,
+    defaults: Option<&'t DeTable<'t>>,
+}
+
+impl<'c, 't> Fields<'c, 't> {
+    pub fn new(context: &'c Context<'t>, table: &'t DeTable<'t>, span: Range<usize>) -> Self {
+        Fields {
+            context,
+            table,
+            place: context.place(span),
+            owner: String::new(),
+            part: None,
+            defaults: None,
+        }
+    }
+
+    pub fn owned_by(mut self, owner: &str) -> Self {
+        self.owner = owner.into();
+        self
+    }
+
+    pub fn for_part(mut self, part: Option<usize>, defaults: Option<&'t DeTable<'t>>) -> Self {
+        self.part = part;
+        self.defaults = defaults;
+        self
+    }
+
+    pub fn address(&self, key: &str) -> String {
+        if self.owner.is_empty() {
+            key.into()
+        } else {
+            format!("{}.{key}", self.owner)
+        }
+    }
+
+    pub fn report(&self, place: Option<Place>, message: impl Into<String>, help: &str) {
+        self.context.report(place, message, help);
+    }
+
+    /// Reports every key that is not among the known ones.
+    pub fn refuse_unknown(&self, known: &[&str], what: &str, advice: impl Fn(&str) -> Option<&'static str>) {
+        for (key, span, _) in in_order(self.table) {
+            if known.contains(&key) {
+                continue;
+            }
+            let help = advice(key).map(str::to_string).unwrap_or_else(|| {
+                match nearest(key, known.iter().copied()) {
+                    Some(near) => format!("did you mean `{near}`?"),
+                    None => format!("known here: {}", known.join(", ")),
+                }
+            });
+            self.report(
+                Some(self.context.place(span)),
+                format!("{what} has no key `{key}`"),
+                &help,
+            );
+        }
+    }
+
+    /// Whether the key is given by the command line or the table itself.
+    fn names(&self, key: &str) -> bool {
+        self.table.contains_key(key) || self.context.overridden(&self.address(key)).is_some()
+    }
+
+    /// The value of a key, wherever it comes from.
+    pub fn find(&self, key: &str) -> Option<Found<'t>> {
+        if let Some(set) = self.context.overridden(&self.address(key)) {
+            return Some(Found {
+                raw: Raw::Text(set.text.clone(), Some(0)),
+                place: set.place.clone(),
+            });
+        }
+        if let Some(value) = self.table.get(key) {
+            return Some(self.context.found(value));
+        }
+        let default = self.defaults?.get(key)?;
+        let gives_way = ALTERNATIVES
+            .iter()
+            .filter(|group| group.contains(&key))
+            .any(|group| group.iter().any(|other| self.names(other)));
+        (!gives_way).then(|| self.context.found(default))
+    }
+
+    /// Whether the key has a value, wherever it comes from.
+    pub fn has(&self, key: &str) -> bool {
+        self.find(key).is_some()
+    }
+
+    /// The place of a key's value, or of the whole table.
+    pub fn place_of(&self, key: &str) -> Place {
+        self.find(key).map_or(self.place.clone(), |found| found.place)
+    }
+
+    /// Reports a key that must be there.
+    pub fn missing(&self, key: &str, kind: Kind, what: &str) {
+        self.report(
+            Some(self.place.clone()),
+            format!("{what} needs `{key}`"),
+            &format!("add {key} = \"{}\"", crate::quantity::example(kind)),
+        );
+    }
+
+    /// A quantity, without entering it anywhere.
+    pub fn quantity(&self, key: &str, kind: Kind) -> Option<Quantity> {
+        let found = self.find(key)?;
+        self.context.quantity(key, &found, kind)
+    }
+
+    /// A quantity entered into the address book.
+    pub fn slot(&self, key: &'static str, kind: Kind) -> Option<Slot> {
+        let found = self.find(key)?;
+        let quantity = self.context.quantity(key, &found, kind)?;
+        let value = match quantity.value {
+            Value::Scalar(value) => value,
+            Value::Radius(value) | Value::Focal(value) => 1.0 / value,
+            Value::Flat => 0.0,
+            Value::PerLength(_) | Value::Brewster => {
+                self.report(
+                    Some(found.place),
+                    format!("`{key}` cannot be \"{}\" here", quantity.text),
+                    &format!("write it like \"{}\"", crate::quantity::example(kind)),
+                );
+                return None;
+            }
+        };
+        Some(self.enter(key, kind, value, quantity.spread, Origin::Written, Some(found.place)))
+    }
+
+    /// A quantity entered into the address book, or the format's own default for it.
+    pub fn slot_or(&self, key: &'static str, kind: Kind, default: f64) -> Slot {
+        self.slot(key, kind)
+            .unwrap_or_else(|| self.enter(key, kind, default, Spread::Exact, Origin::Implied, None))
+    }
+
+    pub fn enter(
+        &self,
+        key: &'static str,
+        kind: Kind,
+        value: f64,
+        spread: Spread,
+        origin: Origin,
+        place: Option<Place>,
+    ) -> Slot {
+        let address = self.address(key);
+        self.context
+            .enter(address, self.part, key, kind, value, spread, origin, place)
+    }
+
+    /// A text; nothing is said where the key is not there.
+    pub fn text(&self, key: &str) -> Option<(String, Place)> {
+        let found = self.find(key)?;
+        match found.raw {
+            Raw::Text(text, _) => Some((text, found.place)),
+            Raw::Number(_) => {
+                self.report(
+                    Some(found.place),
+                    format!("`{key}` must be a text in quotes"),
+                    "",
+                );
+                None
+            }
+            Raw::Other(value) => {
+                self.report(
+                    Some(found.place),
+                    format!("`{key}` must be a text, and this is {}", kind_of(value)),
+                    "",
+                );
+                None
+            }
+        }
+    }
+
+    /// One of a few words, by its index in the list.
+    pub fn word(&self, key: &str, words: &[&str]) -> Option<usize> {
+        let (text, place) = self.text(key)?;
+        let position = words.iter().position(|word| *word == text);
+        if position.is_none() {
+            let help = match nearest(&text, words.iter().copied()) {
+                Some(near) => format!("did you mean \"{near}\"? {}", one_of(words)),
+                None => one_of(words),
+            };
+            self.report(Some(place), format!("`{key}` cannot be \"{text}\""), &help);
+        }
+        position
+    }
+
+    /// A list, in TOML's own values.
+    pub fn list(&self, key: &str, advice: &str) -> Option<Vec<&'t toml::Spanned<DeValue<'t>>>> {
+        let value = self.table.get(key)?;
+        match value.get_ref() {
+            DeValue::Array(items) => Some(items.iter().collect()),
+            other => {
+                self.report(
+                    Some(self.context.place(value.span())),
+                    format!("`{key}` must be a list, and this is {}", kind_of(other)),
+                    advice,
+                );
+                None
+            }
+        }
+    }
+
+    /// A table within this one.
+    pub fn table(&self, key: &str, advice: &str) -> Option<(&'t DeTable<'t>, Range<usize>)> {
+        let value = self.table.get(key)?;
+        match value.get_ref() {
+            DeValue::Table(table) => Some((table, value.span())),
+            other => {
+                self.report(
+                    Some(self.context.place(value.span())),
+                    format!("`{key}` must be a table, and this is {}", kind_of(other)),
+                    advice,
+                );
+                None
+            }
+        }
+    }
+}
+
+fn one_of(words: &[&str]) -> String {
+    let quoted: Vec<String> = words.iter().map(|word| format!("\"{word}\"")).collect();
+    format!("one of {}", quoted.join(", "))
+}

@@ -1,0 +1,503 @@
+//! Cavity files: from their text to a [`Cavity`], or to everything that is wrong with them.
+//!
+//! The room gets a name and a text and never touches a disk. It is the only one that knows TOML.
+
+mod context;
+mod fields;
+mod limits;
+mod mirror;
+mod parts;
+mod plain;
+mod slab;
+mod ties;
+
+use std::cell::{Cell, RefCell};
+use std::collections::HashMap;
+use std::ops::Range;
+
+use toml::Spanned;
+use toml::de::{DeTable, DeValue};
+
+use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Slot};
+use crate::diagnostic::{Diagnostic, Place, Severity, Source};
+use crate::quantity::{Kind, Spread};
+use context::{Context, General, Override, in_order, nearest};
+use fields::Fields;
+
+/// Largest file that is read, in bytes.
+pub const LARGEST_FILE: usize = 1 << 20;
+
+/// Most parts in a path.
+pub const MOST_PARTS: usize = 1000;
+
+/// Room temperature, the default of `temperature`, in kelvin.
+const ROOM_TEMPERATURE: f64 = 293.15;
+
+const TOP: [&str; 19] = [
+    "title",
+    "notes",
+    "wavelength",
+    "form",
+    "ambient",
+    "temperature",
+    "polarisation",
+    "path",
+    "feed",
+    "source",
+    "sidebands",
+    "pump",
+    "limits",
+    "ties",
+    "general",
+    "defaults",
+    "tolerance",
+    "input",
+    "highest_order",
+];
+
+/// A file that has been read.
+#[derive(Clone, Debug)]
+pub struct Loaded {
+    /// The cavity.
+    pub cavity: Cavity,
+    /// Where each address was written.
+    pub places: HashMap<String, Place>,
+}
+
+/// A file that cannot be used.
+#[derive(Clone, Debug)]
+pub struct Refused {
+    /// Everything that is wrong with it, in the order of the text.
+    pub diagnostics: Vec<Diagnostic>,
+    /// The texts that the places point into: the file, then each override.
+    pub sources: Vec<Source>,
+}
+
+/// Reads a cavity file; each of `overrides` is an `ADDRESS=VALUE` that replaces what the file says.
+///
+/// # Errors
+/// Everything that is wrong with the text, all at once.
+pub fn load(name: &str, text: &str, overrides: &[String]) -> Result<Loaded, Refused> {
+    let mut sources = vec![Source {
+        name: name.into(),
+        text: text.into(),
+    }];
+    sources.extend(overrides.iter().map(|set| Source {
+        name: "--set".into(),
+        text: set.clone(),
+    }));
+    match load_sources(&sources) {
+        Ok(loaded) => Ok(loaded),
+        Err(mut diagnostics) => {
+            let key = |d: &Diagnostic| d.place.as_ref().map(|p| (p.source, p.span.start));
+            diagnostics.sort_by_key(key);
+            diagnostics.dedup();
+            Err(Refused {
+                diagnostics,
+                sources,
+            })
+        }
+    }
+}
+
+fn error(place: Option<Place>, message: String, help: &str) -> Diagnostic {
+    Diagnostic {
+        severity: Severity::Error,
+        message,
+        place,
+        label: String::new(),
+        help: (!help.is_empty()).then(|| help.to_string()),
+    }
+}
+
+fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
+    let text = &sources[0].text;
+    if text.len() > LARGEST_FILE {
+        return Err(vec![error(
+            None,
+            format!(
+                "the file has {} bytes; a cavity file has at most {LARGEST_FILE}",
+                text.len()
+            ),
+            "",
+        )]);
+    }
+    let (table, errors) = DeTable::parse_recoverable(text);
+    if !errors.is_empty() {
+        return Err(errors.iter().map(syntax_error).collect());
+    }
+    let context = Context {
+        sources,
+        diagnostics: RefCell::default(),
+        overrides: read_overrides(sources)?,
+        book: RefCell::default(),
+        places: RefCell::default(),
+        tied: Vec::new(),
+        general: RefCell::default(),
+    };
+    read_file(context, &table)
+}
+
+fn syntax_error(error: &toml::de::Error) -> Diagnostic {
+    let message = error.message().replace('\n', "; ");
+    let help = "this is not TOML: a text stands in quotes, a list in [ ], a table in { }";
+    Diagnostic {
+        severity: Severity::Error,
+        message,
+        place: error.span().map(|span| Place { source: 0, span }),
+        label: String::new(),
+        help: Some(help.into()),
+    }
+}
+
+fn read_overrides(sources: &[Source]) -> Result<Vec<Override>, Vec<Diagnostic>> {
+    let mut faults = Vec::new();
+    let mut overrides = Vec::new();
+    for (index, source) in sources.iter().enumerate().skip(1) {
+        let Some((address, value)) = source.text.split_once('=') else {
+            faults.push(error(
+                Some(Place {
+                    source: index,
+                    span: 0..source.text.len(),
+                }),
+                "a setting needs an address, = and a value".into(),
+                "write it like --set 'M3.roc=75 mm'",
+            ));
+            continue;
+        };
+        let trimmed = value.trim();
+        let start = address.len() + 1 + (value.len() - value.trim_start().len());
+        overrides.push(Override {
+            address: address.trim().into(),
+            text: trimmed.trim_matches('"').into(),
+            place: Place {
+                source: index,
+                span: start..start + trimmed.len(),
+            },
+            used: Cell::new(false),
+        });
+    }
+    if faults.is_empty() {
+        Ok(overrides)
+    } else {
+        Err(faults)
+    }
+}
+
+fn read_file<'t>(
+    mut context: Context<'t>,
+    table: &'t Spanned<DeTable<'t>>,
+) -> Result<Loaded, Vec<Diagnostic>> {
+    let top = table.get_ref();
+    let whole = 0..0;
+    let ties = read_ties(&context, top);
+    context.tied = ties.iter().map(|tie| tie.target.clone()).collect();
+    let context = context;
+    let fields = Fields::new(&context, top, whole);
+    fields.refuse_unknown(&TOP, "a cavity file", |key| match key {
+        "lambda" | "lam" => Some("the wavelength in vacuum is `wavelength`"),
+        "mirrors" | "parts" | "elements" | "optics" => {
+            Some("the parts are listed in `path`, as the beam meets them")
+        }
+        "type" | "kind" => Some("the form is `form`: \"standing\" or \"ring\""),
+        _ => None,
+    });
+    read_general(&fields);
+    enter_globals(&fields);
+    let form = read_form(&fields);
+    let ambient = parts::read_medium(&fields, "ambient", Index::VACUUM);
+    let defaults = read_defaults(&fields);
+    let parts = read_path(&fields, ambient, defaults);
+    plain::read_plain(&fields, ambient);
+    ties::resolve_all(&context, &ties);
+    report_unused_overrides(&context);
+
+    let (Some(form), Some(parts), true) = (
+        form,
+        parts,
+        context.diagnostics.borrow().is_empty(),
+    ) else {
+        return Err(context.diagnostics.take());
+    };
+    let spans = part_spans(top);
+    let draft = Draft {
+        form,
+        ambient,
+        parts,
+        book: context.book.borrow().clone(),
+    };
+    let mut cavity = Cavity::assemble(draft).map_err(|faults| {
+        faults
+            .into_iter()
+            .map(|fault| {
+                let (table, span) = match fault.part.and_then(|part| spans.get(part)) {
+                    Some((table, span)) => (Some(*table), span.clone()),
+                    None => (None, key_span(top, "path")),
+                };
+                let span = fault
+                    .key
+                    .and_then(|key| table?.get(key))
+                    .map_or(span, Spanned::span);
+                error(Some(context.place(span)), fault.message, &fault.help)
+            })
+            .collect::<Vec<_>>()
+    })?;
+    plain::check_input(&fields, &cavity);
+    cavity.title = fields.text("title").map(|(text, _)| text);
+    let limits = fields.list("limits", "limits = [ { of = \"margin\", above = 0.1 } ]");
+    cavity.limits = limits
+        .into_iter()
+        .flatten()
+        .filter_map(|limit| limits::read_limit(&context, limit, &cavity))
+        .collect();
+    let diagnostics = context.diagnostics.take();
+    if diagnostics.is_empty() {
+        Ok(Loaded {
+            cavity,
+            places: context.places.take(),
+        })
+    } else {
+        Err(diagnostics)
+    }
+}
+
+/// The numbers of the whole cavity, in the slots that [`Cavity`] expects them in.
+fn enter_globals(fields: &Fields<'_, '_>) {
+    let wavelength = fields.slot_or("wavelength", Kind::Length, 0.0);
+    if !fields.has("wavelength") {
+        fields.report(
+            None,
+            "the file does not give the `wavelength`",
+            "add wavelength = \"1064 nm\", the wavelength in vacuum",
+        );
+    } else if wavelength.of(&fields.context.book.borrow().nominal()) == 0.0
+        && fields.context.diagnostics.borrow().is_empty()
+    {
+        fields.report(
+            Some(fields.place_of("wavelength")),
+            "the wavelength cannot be zero",
+            "write it like wavelength = \"1064 nm\"",
+        );
+    }
+    let temperature = fields.slot_or("temperature", Kind::Temperature, ROOM_TEMPERATURE);
+    let pump = fields.slot_or("pump", Kind::Power, 0.0);
+    debug_assert_eq!(
+        [wavelength, temperature, pump],
+        [Cavity::WAVELENGTH, Cavity::TEMPERATURE, Cavity::PUMP]
+    );
+}
+
+fn read_form(fields: &Fields<'_, '_>) -> Option<Form> {
+    if !fields.has("form") {
+        fields.report(
+            None,
+            "the file does not give the `form`",
+            "add form = \"standing\" (from one end mirror to the other) or form = \"ring\"",
+        );
+    }
+    match fields.word("form", &["standing", "ring"])? {
+        0 => Some(Form::Standing),
+        _ => Some(Form::Ring),
+    }
+}
+
+fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
+    let advice = "write it like defaults = { mirror = { diameter = \"12.7 mm\" } }";
+    let (table, _) = fields.table("defaults", advice)?;
+    for (kind, span, value) in in_order(table) {
+        let place = Some(fields.context.place(span));
+        let Some((_, known)) = parts::KINDS.iter().find(|(name, _)| *name == kind) else {
+            let names: Vec<&str> = parts::KINDS.iter().map(|(name, _)| *name).collect();
+            fields.report(
+                place,
+                format!("\"{kind}\" is no kind of part"),
+                &format!("kinds: {}", names.join(", ")),
+            );
+            continue;
+        };
+        match value.get_ref() {
+            DeValue::Table(inner) => Fields::new(fields.context, inner, value.span())
+                .refuse_unknown(&known[1..], &format!("a {kind}"), |_| None),
+            _ => fields.report(place, format!("the defaults of a {kind} are a table"), advice),
+        }
+    }
+    Some(table)
+}
+
+fn read_general(fields: &Fields<'_, '_>) {
+    let advice = "write it like general = { length = \"0.2 mm\", roc = \"1 %\" }";
+    let Some((table, span)) = fields.table("general", advice) else {
+        return;
+    };
+    let general = Fields::new(fields.context, table, span).owned_by("general");
+    for (key, key_span, value) in in_order(table) {
+        let Some(kind) = toleranced_kind(key) else {
+            let help = match nearest(key, TOLERANCED.iter().map(|(key, _)| *key)) {
+                Some(near) => format!("did you mean `{near}`?"),
+                None => advice.to_string(),
+            };
+            fields.report(
+                Some(fields.context.place(key_span)),
+                format!("there is no general tolerance for `{key}`"),
+                &help,
+            );
+            continue;
+        };
+        let found = fields.context.found(value);
+        let relative = matches!(&found.raw, context::Raw::Text(text, _) if text.trim_end().ends_with('%'))
+            && kind != Kind::Ratio;
+        let kind = if relative { Kind::Ratio } else { kind };
+        let Some(half) = general
+            .quantity(key, kind)
+            .and_then(|quantity| quantity.scalar())
+        else {
+            continue;
+        };
+        let rule = if relative {
+            General::Relative(half.abs())
+        } else {
+            General::Absolute(half.abs())
+        };
+        fields.context.general.borrow_mut().insert(key.into(), rule);
+    }
+}
+
+/// Keys that can have a general tolerance, with the kind of the tolerance itself.
+const TOLERANCED: [(&str, Kind); 16] = [
+    ("length", Kind::Length),
+    ("thickness", Kind::Length),
+    ("roc", Kind::Length),
+    ("entrance", Kind::Length),
+    ("exit", Kind::Length),
+    ("back", Kind::Length),
+    ("focal", Kind::Length),
+    ("diameter", Kind::Length),
+    ("aoi", Kind::Angle),
+    ("pointing", Kind::Angle),
+    ("thermal", Kind::Curvature),
+    ("strength", Kind::Strength),
+    ("index", Kind::Number),
+    ("reflectance", Kind::Ratio),
+    ("transmission", Kind::Ratio),
+    ("loss", Kind::Ratio),
+];
+
+fn toleranced_kind(key: &str) -> Option<Kind> {
+    TOLERANCED
+        .iter()
+        .find(|(name, _)| *name == key)
+        .map(|(_, kind)| *kind)
+}
+
+fn read_ties<'t>(context: &Context<'t>, top: &'t DeTable<'t>) -> Vec<ties::Written> {
+    let advice = "write it like ties = [\"d4.length = d3.length\"]";
+    let fields = Fields::new(context, top, 0..0);
+    let items = fields.list("ties", advice).unwrap_or_default();
+    items
+        .into_iter()
+        .filter_map(|item| {
+            let found = context.found(item);
+            match found.raw {
+                context::Raw::Text(text, offset) => {
+                    ties::split(context, &text, found.place, offset.unwrap_or(0))
+                }
+                _ => {
+                    context.report(Some(found.place), "a tie must be a text", advice);
+                    None
+                }
+            }
+        })
+        .collect()
+}
+
+fn read_path<'t>(
+    fields: &Fields<'_, 't>,
+    ambient: Index,
+    defaults: Option<&'t DeTable<'t>>,
+) -> Option<Vec<crate::cavity::Part>> {
+    let advice = "path = [ { mirror = \"M1\", … }, { gap = \"d1\", … }, … ], or [[path]] blocks";
+    if !fields.has("path") {
+        fields.report(None, "the file has no `path`", advice);
+    }
+    let items = fields.list("path", advice)?;
+    if items.len() > MOST_PARTS {
+        fields.report(
+            Some(fields.context.place(items[MOST_PARTS].span())),
+            format!("the path has {} parts; at most {MOST_PARTS} are read", items.len()),
+            "",
+        );
+        return None;
+    }
+    let parts: Vec<_> = items
+        .into_iter()
+        .enumerate()
+        .map(|(index, item)| {
+            parts::read_part(fields.context, item, Some(index), ambient, defaults)
+        })
+        .collect();
+    parts.into_iter().collect()
+}
+
+fn report_unused_overrides(context: &Context<'_>) {
+    let book = context.book.borrow();
+    for set in context.overrides.iter().filter(|set| !set.used.get()) {
+        let known = book.iter().map(|(_, entry)| entry.address.as_str());
+        let help = match nearest(&set.address, known) {
+            Some(near) => format!("did you mean {near}?"),
+            None => "an address is PART.key, such as M3.roc, or wavelength, temperature, pump".into(),
+        };
+        let place = Place {
+            source: set.place.source,
+            span: 0..set.address.len(),
+        };
+        context.report(
+            Some(place),
+            format!("there is nothing at the address {}", set.address),
+            &help,
+        );
+    }
+}
+
+/// Tables of the parts with their places, in order.
+fn part_spans<'t>(top: &'t DeTable<'t>) -> Vec<(&'t DeTable<'t>, Range<usize>)> {
+    let items = top.get("path").and_then(|path| path.get_ref().as_array());
+    items
+        .into_iter()
+        .flat_map(|items| items.iter())
+        .filter_map(|item| Some((item.get_ref().as_table()?, item.span())))
+        .collect()
+}
+
+fn key_span(top: &DeTable<'_>, key: &str) -> Range<usize> {
+    top.iter()
+        .find(|(name, _)| &**name.get_ref() == key)
+        .map_or(0..0, |(name, _)| name.span())
+}
+
+impl Loaded {
+    /// The place where the number in a slot was written, if it was.
+    pub fn place(&self, slot: Slot) -> Option<&Place> {
+        self.places.get(&self.cavity.book().entry(slot).address)
+    }
+}
+
+/// A book with the three numbers every cavity has, for cavities that are not read from a file.
+pub fn global_book(wavelength: f64) -> Book {
+    let mut book = Book::default();
+    for (key, kind, value, origin) in [
+        ("wavelength", Kind::Length, wavelength, Origin::Written),
+        ("temperature", Kind::Temperature, ROOM_TEMPERATURE, Origin::Implied),
+        ("pump", Kind::Power, 0.0, Origin::Implied),
+    ] {
+        book.enter(crate::cavity::Entry {
+            address: key.into(),
+            part: None,
+            key,
+            kind,
+            value,
+            spread: Spread::Exact,
+            origin,
+        });
+    }
+    book
+}

@@ -1,0 +1,533 @@
+//! The parts of a path, each one table whose kind key holds its name.
+
+use toml::Spanned;
+use toml::de::{DeTable, DeValue};
+
+use super::context::{Context, in_order, kind_of};
+use super::fields::Fields;
+use super::mirror::read_mirror;
+use super::slab::read_slab;
+use crate::cavity::{Element, Index, Opening, Part, Slot};
+use crate::optics::{PerPlane, Plane};
+use crate::quantity::{Kind, Spread};
+
+/// Kinds of parts and the keys each knows.
+pub(super) const KINDS: [(&str, &[&str]); 7] = [
+    (
+        "mirror",
+        &[
+            "mirror",
+            "roc",
+            "roc_tangential",
+            "roc_sagittal",
+            "aoi",
+            "fold",
+            "fold_plane",
+            "reflectance",
+            "reflectance_s",
+            "reflectance_p",
+            "transmission",
+            "transmission_s",
+            "transmission_p",
+            "loss",
+            "loss_s",
+            "loss_p",
+            "diameter",
+            "width",
+            "height",
+            "clear",
+            "thickness",
+            "substrate",
+            "back",
+            "damage",
+            "pointing",
+            "notes",
+        ],
+    ),
+    ("gap", &["gap", "length", "medium", "notes"]),
+    (
+        "lens",
+        &[
+            "lens",
+            "focal",
+            "focal_tangential",
+            "focal_sagittal",
+            "loss",
+            "diameter",
+            "notes",
+        ],
+    ),
+    (
+        "slab",
+        &[
+            "slab",
+            "thickness",
+            "material",
+            "axis",
+            "index",
+            "group_index",
+            "temperature",
+            "aoi",
+            "shift",
+            "entrance",
+            "exit",
+            "thermal",
+            "thermal_tangential",
+            "thermal_sagittal",
+            "thermal_per_watt",
+            "thermal_per_watt_tangential",
+            "thermal_per_watt_sagittal",
+            "thermal_at",
+            "loss",
+            "conversion",
+            "diameter",
+            "width",
+            "height",
+            "clear",
+            "notes",
+        ],
+    ),
+    (
+        "duct",
+        &[
+            "duct",
+            "length",
+            "index",
+            "group_index",
+            "strength",
+            "strength_tangential",
+            "strength_sagittal",
+            "profile",
+            "notes",
+        ],
+    ),
+    (
+        "aperture",
+        &["aperture", "radius", "half_width", "plane", "notes"],
+    ),
+    (
+        "matrix",
+        &["matrix", "tangential", "sagittal", "length", "notes"],
+    ),
+];
+
+/// Names a part cannot have: they begin addresses and measures of the whole cavity.
+const RESERVED: [&str; 19] = [
+    "wavelength",
+    "temperature",
+    "pump",
+    "source",
+    "feed",
+    "margin",
+    "half_trace",
+    "gouy",
+    "distance",
+    "round_trip_length",
+    "fsr",
+    "linewidth",
+    "finesse",
+    "lifetime",
+    "buildup",
+    "spacing",
+    "mode_clearance",
+    "parasitic",
+    "suppression",
+];
+
+/// Longest name of a part, in characters: longer ones do not fit a table of results.
+const LONGEST_NAME: usize = 24;
+
+/// What a practitioner may well write, and what to write instead.
+fn advice(kind: &str, key: &str) -> Option<&'static str> {
+    Some(match (kind, key) {
+        ("slab", "length") => "a slab's size is `thickness`, square to its faces",
+        ("slab", "roc") => "a slab's faces are `entrance` and `exit`, convex or concave from outside",
+        ("slab", "n") | ("duct", "n") => "the refractive index is `index`",
+        ("slab", "focal") => "a thermal lens is `thermal`, its dioptric power in 1/m",
+        ("gap", "thickness") => "a gap's size is its `length` along the beam",
+        ("gap", "index" | "n") => "what fills a gap is its `medium`: a number or a material",
+        ("mirror", "radius") => "a mirror's radius of curvature is `roc`",
+        ("mirror", "angle") => "the angle of incidence is `aoi`, half the angle between the beams",
+        ("mirror", "focal") => "a mirror is given by its radius of curvature `roc`, twice its focal length",
+        ("lens", "roc" | "thickness" | "index") => {
+            "a thin lens has `focal`; a thick one is a slab with `entrance` and `exit`"
+        }
+        ("lens", "power") => "a thin lens is given by its focal length, `focal`",
+        ("aperture", "diameter") => "an aperture is given by its `radius`, half the diameter",
+        _ => return None,
+    })
+}
+
+/// One part of a path; `index` is its number there, none for a part of the feed.
+pub(super) fn read_part<'t>(
+    context: &Context<'t>,
+    value: &'t Spanned<DeValue<'t>>,
+    index: Option<usize>,
+    ambient: Index,
+    defaults: Option<&'t DeTable<'t>>,
+) -> Option<Part> {
+    let place = context.place(value.span());
+    let DeValue::Table(table) = value.get_ref() else {
+        context.report(
+            Some(place),
+            format!("a part must be a table, and this is {}", kind_of(value.get_ref())),
+            "write it like { mirror = \"M1\", roc = \"100 mm\" }",
+        );
+        return None;
+    };
+    let kinds: Vec<&(&str, &[&str])> = KINDS
+        .iter()
+        .filter(|(kind, _)| table.contains_key(*kind))
+        .collect();
+    let [(kind, known)] = kinds[..] else {
+        let names: Vec<&str> = KINDS.iter().map(|(kind, _)| *kind).collect();
+        let message = if kinds.is_empty() {
+            "this part does not say what it is".to_string()
+        } else {
+            format!("this part is a {} and a {} at once", kinds[0].0, kinds[1].0)
+        };
+        let first = in_order(table).into_iter().next();
+        context.report(
+            Some(first.map_or(place, |(_, span, _)| context.place(span))),
+            message,
+            &format!(
+                "one key tells the kind and holds the name, as in {{ mirror = \"M1\", … }}; kinds: {}",
+                names.join(", ")
+            ),
+        );
+        return None;
+    };
+
+    let fields = Fields::new(context, table, value.span());
+    let name = read_name(&fields, kind)?;
+    let defaults = defaults
+        .and_then(|all| all.get(*kind))
+        .and_then(|value| value.get_ref().as_table());
+    let fields = fields.owned_by(&name).for_part(index, defaults);
+    fields.refuse_unknown(known, &format!("a {kind}"), |key| advice(kind, key));
+    fields.text("notes");
+
+    let element = match *kind {
+        "mirror" => read_mirror(&fields)?,
+        "gap" => Element::Gap {
+            length: required(&fields, "length", Kind::Length, "a gap")?,
+            medium: read_medium(&fields, "medium", ambient),
+        },
+        "lens" => {
+            fields.slot("loss", Kind::Ratio);
+            Element::Lens {
+                power: read_pair(
+                    &fields,
+                    ["focal", "focal_tangential", "focal_sagittal"],
+                    Kind::Focal,
+                    "a lens",
+                )?,
+            }
+        }
+        "slab" => read_slab(&fields)?,
+        "duct" => read_duct(&fields)?,
+        "aperture" => Element::Aperture,
+        _ => read_matrix(&fields)?,
+    };
+    let opening = match *kind {
+        "aperture" => Some(read_hole(&fields)?),
+        "mirror" | "lens" | "slab" => read_opening(&fields),
+        _ => None,
+    };
+    let clear = match *kind {
+        // Coatings and polish end before the rim: common practice, no source.
+        "mirror" | "slab" => fields.slot("clear", Kind::Ratio).map_or(0.9, |slot| {
+            slot.of(&context.book.borrow().nominal())
+        }),
+        _ => 1.0,
+    };
+    Some(Part {
+        name,
+        element,
+        swapped: false,
+        before: ambient,
+        after: ambient,
+        opening,
+        clear,
+    })
+}
+
+fn read_name(fields: &Fields<'_, '_>, kind: &str) -> Option<String> {
+    let (name, place) = fields.text(kind)?;
+    let help = "a name is letters, digits, _ and -, begins with a letter or digit, and has at most \
+                24 characters";
+    let is_plain = |c: char| c.is_alphanumeric() || c == '_' || c == '-';
+    if name.is_empty()
+        || name.chars().count() > LONGEST_NAME
+        || !name.chars().all(is_plain)
+        || name.starts_with(['-', '_'])
+    {
+        let shown: String = name.chars().take(40).collect();
+        fields.report(
+            Some(place),
+            format!("\"{}\" cannot be the name of a part", shown.escape_debug()),
+            help,
+        );
+        return None;
+    }
+    if RESERVED.contains(&name.as_str()) || name == "coupling" {
+        fields.report(
+            Some(place),
+            format!("\"{name}\" cannot be the name of a part: results use that word"),
+            "choose another name, such as M1 or d1",
+        );
+        return None;
+    }
+    Some(name)
+}
+
+/// A number that must be there, entered into the address book.
+pub(super) fn required(
+    fields: &Fields<'_, '_>,
+    key: &'static str,
+    kind: Kind,
+    what: &str,
+) -> Option<Slot> {
+    if !fields.has(key) {
+        // A tied number may be left out: its value follows.
+        if fields.context.is_tied(&fields.address(key)) {
+            return Some(fields.enter(
+                key,
+                kind,
+                0.0,
+                Spread::Exact,
+                crate::cavity::Origin::Tied,
+                None,
+            ));
+        }
+        fields.missing(key, kind, what);
+        return None;
+    }
+    fields.slot(key, kind)
+}
+
+/// One number for both planes, or one for each.
+pub(super) fn read_pair(
+    fields: &Fields<'_, '_>,
+    [both, tangential, sagittal]: [&'static str; 3],
+    kind: Kind,
+    what: &str,
+) -> Option<PerPlane<Slot>> {
+    let apart = fields.has(tangential) || fields.has(sagittal);
+    if apart && fields.has(both) {
+        fields.report(
+            Some(fields.place_of(both)),
+            format!("`{both}` and `{tangential}`, `{sagittal}` say the same thing twice"),
+            &format!("keep either `{both}` or the pair"),
+        );
+        return None;
+    }
+    if apart {
+        let pair = (
+            required(fields, tangential, kind, what),
+            required(fields, sagittal, kind, what),
+        );
+        return Some(PerPlane {
+            tangential: pair.0?,
+            sagittal: pair.1?,
+        });
+    }
+    required(fields, both, kind, what).map(PerPlane::both)
+}
+
+/// The medium of a gap or of the surroundings: a number or the name of a material.
+pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: Index) -> Index {
+    let Some(found) = fields.find(key) else {
+        return ambient;
+    };
+    if let super::context::Raw::Text(text, _) = &found.raw {
+        if text == "vacuum" {
+            return Index::VACUUM;
+        }
+        if text.starts_with(|c: char| c.is_alphabetic()) {
+            fields.report(
+                Some(found.place),
+                format!("the material \"{text}\" is not available yet"),
+                "write its refractive index as a number, such as 1.33, or \"vacuum\"",
+            );
+            return ambient;
+        }
+    }
+    let Some(quantity) = fields.context.quantity(key, &found, Kind::Number) else {
+        return ambient;
+    };
+    match quantity.scalar() {
+        Some(index) if index >= 1.0 => Index::Fixed {
+            phase: index,
+            group: None,
+        },
+        _ => {
+            fields.report(
+                Some(found.place),
+                format!("`{key}` cannot be \"{}\"", quantity.text),
+                "a refractive index is 1 or more",
+            );
+            ambient
+        }
+    }
+}
+
+/// `index` and `group_index`.
+pub(super) fn read_index(fields: &Fields<'_, '_>, what: &str) -> Option<Index> {
+    let phase = required(fields, "index", Kind::Number, what)?;
+    let group = fields.slot("group_index", Kind::Number);
+    let nominal = fields.context.book.borrow().nominal();
+    let mut good = true;
+    for (key, slot) in [("index", Some(phase)), ("group_index", group)] {
+        if let Some(slot) = slot
+            && slot.of(&nominal) < 1.0
+        {
+            good = false;
+            fields.report(
+                Some(fields.place_of(key)),
+                format!("`{key}` must be 1 or more"),
+                "a transparent medium slows light down; check the digits",
+            );
+        }
+    }
+    good.then_some(Index::Slots { phase, group })
+}
+
+fn read_duct(fields: &Fields<'_, '_>) -> Option<Element> {
+    let length = required(fields, "length", Kind::Length, "a duct");
+    let index = read_index(fields, "a duct");
+    let strength = read_pair(
+        fields,
+        ["strength", "strength_tangential", "strength_sagittal"],
+        Kind::Strength,
+        "a duct",
+    );
+    let antiguiding = fields.word("profile", &["guiding", "antiguiding"]) == Some(1);
+    Some(Element::Duct {
+        length: length?,
+        index: index?,
+        strength: strength?,
+        antiguiding,
+    })
+}
+
+fn read_hole(fields: &Fields<'_, '_>) -> Option<Opening> {
+    let round = fields.has("radius");
+    let slit = fields.has("half_width") || fields.has("plane");
+    if round == slit {
+        fields.report(
+            Some(fields.place.clone()),
+            "an aperture is either a round hole or a slit",
+            "write radius = \"1 mm\", or half_width = \"1 mm\" with plane = \"tangential\" or \
+             \"sagittal\"",
+        );
+        return None;
+    }
+    if round {
+        return Some(Opening::Hole {
+            radius: fields.slot("radius", Kind::Length)?,
+        });
+    }
+    let half_width = required(fields, "half_width", Kind::Length, "a slit");
+    let plane = fields.word("plane", &["tangential", "sagittal"]);
+    if plane.is_none() && !fields.has("plane") {
+        fields.report(
+            Some(fields.place.clone()),
+            "a slit needs `plane`, the plane that it limits",
+            "add plane = \"tangential\" or plane = \"sagittal\"",
+        );
+    }
+    Some(Opening::Slit {
+        half_width: half_width?,
+        plane: Plane::BOTH[plane?],
+    })
+}
+
+fn read_opening(fields: &Fields<'_, '_>) -> Option<Opening> {
+    let (width, height) = (fields.has("width"), fields.has("height"));
+    if fields.has("diameter") {
+        if width || height {
+            fields.report(
+                Some(fields.place_of("diameter")),
+                "`diameter` and `width`, `height` say the same thing twice",
+                "keep `diameter` for a round optic, `width` and `height` for a rectangular one",
+            );
+        }
+        return fields
+            .slot("diameter", Kind::Length)
+            .map(|diameter| Opening::Round { diameter });
+    }
+    if width || height {
+        return Some(Opening::Rectangle {
+            width: required(fields, "width", Kind::Length, "a rectangular optic")?,
+            height: required(fields, "height", Kind::Length, "a rectangular optic")?,
+        });
+    }
+    None
+}
+
+fn read_matrix(fields: &Fields<'_, '_>) -> Option<Element> {
+    let entries = PerPlane::from_fn(|plane| read_entries(fields, plane.name()));
+    let length = fields.slot_or("length", Kind::Length, 0.0);
+    Some(Element::Matrix {
+        entries: PerPlane {
+            tangential: entries.tangential?,
+            sagittal: entries.sagittal?,
+        },
+        length,
+    })
+}
+
+/// A determinant further from 1 than this is no rounding of written digits.
+const DETERMINANT_WITHIN: f64 = 1e-6;
+
+fn read_entries(fields: &Fields<'_, '_>, key: &'static str) -> Option<[f64; 4]> {
+    let help = "write it like [[1, 0.1], [0, 1]]: A, B in metres, then C in 1/m, D, in reduced \
+                coordinates";
+    if !fields.has(key) {
+        fields.report(
+            Some(fields.place.clone()),
+            format!("a matrix needs `{key}`"),
+            help,
+        );
+        return None;
+    }
+    let rows = fields.list(key, help)?;
+    let numbers: Option<Vec<f64>> = rows
+        .iter()
+        .map(|row| row.get_ref().as_array())
+        .map(|row| {
+            let row: Vec<_> = row?.iter().map(|x| fields.context.found(x)).collect();
+            (row.len() == 2).then_some(row)
+        })
+        .flat_map(|row| match row {
+            Some(row) => row.into_iter().map(Some).collect(),
+            None => vec![None],
+        })
+        .map(|found| match found?.raw {
+            super::context::Raw::Number(x) if x.is_finite() => Some(x),
+            _ => None,
+        })
+        .collect();
+    let entries: Option<[f64; 4]> = numbers.and_then(|n| n.try_into().ok());
+    let place = fields.place_of(key);
+    let Some(m) = entries else {
+        fields.report(
+            Some(place),
+            format!("`{key}` must be two rows of two bare numbers"),
+            help,
+        );
+        return None;
+    };
+    let determinant = m[0] * m[3] - m[1] * m[2];
+    if (determinant - 1.0).abs() > DETERMINANT_WITHIN {
+        fields.report(
+            Some(place),
+            format!("the determinant of `{key}` is {determinant:.6}, and must be 1"),
+            "in reduced coordinates (x, n·θ) every lossless element has determinant 1; multiply \
+             angles by the index of the medium they are in",
+        );
+        return None;
+    }
+    Some(m)
+}

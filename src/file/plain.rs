@@ -1,0 +1,120 @@
+//! What a file may say already although nothing computes with it yet: its values are read and
+//! checked, so that a file is right once and for all.
+
+use toml::de::{DeTable, DeValue};
+
+use super::context::{Context, Raw, in_order};
+use super::fields::Fields;
+use super::parts::read_part;
+use crate::cavity::{Cavity, Index};
+use crate::quantity::Kind;
+
+/// Keys of a source with their kinds; texts have none.
+const SOURCE: [(&str, Option<Kind>); 19] = [
+    ("waist", Some(Kind::Length)),
+    ("at", Some(Kind::Position)),
+    ("waist_tangential", Some(Kind::Length)),
+    ("at_tangential", Some(Kind::Position)),
+    ("waist_sagittal", Some(Kind::Length)),
+    ("at_sagittal", Some(Kind::Position)),
+    ("spot", Some(Kind::Length)),
+    ("wavefront", Some(Kind::Curvature)),
+    ("mode_field", Some(Kind::Length)),
+    ("m2", Some(Kind::Number)),
+    ("power", Some(Kind::Power)),
+    ("energy", Some(Kind::Energy)),
+    ("offset_tangential", Some(Kind::Position)),
+    ("offset_sagittal", Some(Kind::Position)),
+    ("tilt_tangential", Some(Kind::Angle)),
+    ("tilt_sagittal", Some(Kind::Angle)),
+    ("cavity", None),
+    ("mirror", None),
+    ("notes", None),
+];
+
+/// Reads what the top level holds for later work.
+pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
+    let context = fields.context;
+    fields.text("title");
+    fields.text("notes");
+    fields.word("polarisation", &["s", "p"]);
+    if let Some(found) = fields.find("highest_order") {
+        let good =
+            matches!(found.raw, Raw::Number(n) if n.fract() == 0.0 && (1.0..=100.0).contains(&n));
+        if !good {
+            context.report(
+                Some(found.place),
+                "`highest_order` must be a whole number from 1 to 100",
+                "write it like highest_order = 12",
+            );
+        }
+    }
+    if let Some(frequencies) = fields.list("sidebands", "write it like sidebands = [\"12 MHz\"]") {
+        for frequency in frequencies {
+            context.quantity("sidebands", &context.found(frequency), Kind::Frequency);
+        }
+    }
+    if let Some((table, span)) = fields.table("source", "write it like { waist = \"350 um\", at = \"-600 mm\" }") {
+        let source = Fields::new(context, table, span).owned_by("source");
+        source.refuse_unknown(&SOURCE.map(|(key, _)| key), "a source", |_| None);
+        for (key, kind) in SOURCE {
+            match kind {
+                Some(kind) => drop(source.slot(key, kind)),
+                None => drop(source.text(key)),
+            }
+        }
+    }
+    if let Some(feed) = fields.list("feed", "list the optics between source and input mirror") {
+        for part in feed {
+            read_part(context, part, None, ambient, None);
+        }
+    }
+    if let Some((table, _)) = fields.table("tolerance", "write it like { shape = \"rectangular\" }") {
+        read_tolerance(context, table);
+    }
+}
+
+const SHAPES: [&str; 2] = ["rectangular", "normal"];
+
+fn read_tolerance<'t>(context: &Context<'t>, table: &'t DeTable<'t>) {
+    let fields = Fields::new(context, table, 0..0).owned_by("tolerance");
+    fields.refuse_unknown(
+        &["shape", "shapes", "groups", "adjust", "cost"],
+        "`tolerance`",
+        |_| None,
+    );
+    fields.word("shape", &SHAPES);
+    if let Some((shapes, span)) = fields.table("shapes", "write it like { \"M3.roc\" = \"normal\" }") {
+        let shapes_fields = Fields::new(context, shapes, span).owned_by("tolerance.shapes");
+        for (address, _, _) in in_order(shapes) {
+            shapes_fields.word(address, &SHAPES);
+        }
+    }
+    for key in ["groups", "adjust"] {
+        for item in fields.list(key, "a list of tables").into_iter().flatten() {
+            if !matches!(item.get_ref(), DeValue::Table(_)) {
+                context.report(
+                    Some(context.place(item.span())),
+                    format!("every entry of `{key}` must be a table"),
+                    "",
+                );
+            }
+        }
+    }
+    fields.table("cost", "write it like { \"d1.length\" = 2.0 }");
+}
+
+/// Checks that the input mirror exists and is a mirror.
+pub(super) fn check_input(fields: &Fields<'_, '_>, cavity: &Cavity) {
+    let Some((name, place)) = fields.text("input") else {
+        return;
+    };
+    let part = cavity.parts().iter().find(|part| part.name == name);
+    if part.is_none_or(|part| part.kind() != "mirror") {
+        fields.report(
+            Some(place),
+            format!("no mirror is named \"{name}\""),
+            "`input` names the mirror by which the source enters",
+        );
+    }
+}

@@ -1,0 +1,98 @@
+//! Slabs: plates, rods and crystals with their faces and thermal lenses.
+
+use super::fields::Fields;
+use super::mirror::read_side;
+use super::parts::{read_index, read_pair, required};
+use crate::cavity::{Element, Incidence, Side, Slab, ThermalLens, ThermalPlace};
+use crate::quantity::{Kind, Value};
+
+pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
+    let thickness = required(fields, "thickness", Kind::Length, "a slab");
+    let index = read_slab_index(fields);
+    let incidence = read_incidence(fields);
+    let shift = if fields.has("shift") {
+        read_side(fields, "shift")
+    } else {
+        Some(Side::Left)
+    };
+    let entrance = fields.slot_or("entrance", Kind::Face, 0.0);
+    let exit = fields.slot_or("exit", Kind::Face, 0.0);
+    let thermal = read_thermal(fields);
+    fields.slot("temperature", Kind::Temperature);
+    if fields.has("loss") {
+        fields.quantity("loss", Kind::Loss);
+    }
+    fields.slot("conversion", Kind::PerWatt);
+    if let (Some(slot), Some(found)) = (thickness, fields.find("thickness"))
+        && slot.of(&fields.context.book.borrow().nominal()) <= 0.0
+    {
+        fields.report(
+            Some(found.place),
+            "a slab has a thickness above zero",
+            "a thin optic with power is a lens",
+        );
+        return None;
+    }
+    Some(Element::Slab(Slab {
+        thickness: thickness?,
+        index: index?,
+        incidence,
+        shift: shift?,
+        entrance,
+        exit,
+        thermal,
+    }))
+}
+
+fn read_slab_index(fields: &Fields<'_, '_>) -> Option<crate::cavity::Index> {
+    if let Some((name, place)) = fields.text("material") {
+        fields.report(
+            Some(place),
+            format!("the material \"{name}\" is not available yet"),
+            "write its refractive index instead: index = 1.45, and group_index for the FSR",
+        );
+        return None;
+    }
+    read_index(fields, "a slab")
+}
+
+fn read_incidence(fields: &Fields<'_, '_>) -> Incidence {
+    let brewster = fields
+        .find("aoi")
+        .and_then(|found| fields.context.quantity("aoi", &found, Kind::SlabAngle))
+        .is_some_and(|quantity| quantity.value == Value::Brewster);
+    if brewster {
+        return Incidence::Brewster;
+    }
+    Incidence::Angle(fields.slot_or("aoi", Kind::SlabAngle, 0.0))
+}
+
+fn read_thermal(fields: &Fields<'_, '_>) -> Option<ThermalLens> {
+    let pair = |keys: [&'static str; 3]| {
+        keys.iter()
+            .any(|key| fields.has(key) || fields.context.is_tied(&fields.address(key)))
+            .then(|| read_pair(fields, keys, Kind::Curvature, "a slab"))
+            .flatten()
+    };
+    let power = pair(["thermal", "thermal_tangential", "thermal_sagittal"]);
+    let power_per_watt = pair([
+        "thermal_per_watt",
+        "thermal_per_watt_tangential",
+        "thermal_per_watt_sagittal",
+    ]);
+    let places = ["spread", "entrance", "middle", "exit"];
+    let place = match fields.word("thermal_at", &places) {
+        Some(1) => ThermalPlace::Entrance,
+        Some(2) => ThermalPlace::Middle,
+        Some(3) => ThermalPlace::Exit,
+        _ => ThermalPlace::Spread,
+    };
+    if power.is_none() && power_per_watt.is_none() {
+        return None;
+    }
+    Some(ThermalLens {
+        power,
+        power_per_watt,
+        place,
+    })
+}

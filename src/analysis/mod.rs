@@ -1,5 +1,6 @@
 //! What a cavity does: plain data in, plain documented results out.
 
+pub mod check;
 pub mod clipping;
 pub mod eigenmode;
 pub mod envelope;

@@ -144,11 +144,15 @@ pub fn stable_range(cavity: &Cavity, slot: Slot) -> QuantityRange {
     }
 }
 
-/// How far a search goes, in multiples of the quantity's natural scale.
+/// How far the search for an edge of a stable cavity goes, in multiples of the quantity's natural
+/// scale.
 const REACH: f64 = 1e9;
 
+/// How far the search for a way back to stability goes: nobody moves a mirror further.
+const REACH_BACK: f64 = 100.0;
+
 /// Evaluations spent on one direction of one quantity before the search gives up.
-const BUDGET: usize = 30_000;
+const BUDGET: usize = 8_000;
 
 /// Edges nearer to each other than this share of the scale are one edge: the roots of two
 /// functions that vanish together differ by their rounding.
@@ -164,9 +168,17 @@ struct Probe<'a> {
     nominal: f64,
     /// A change that matters: the round trip's length, or its reciprocal for curvatures.
     scale: f64,
-    lowest: f64,
-    highest: f64,
+    lowest: Bound,
+    highest: Bound,
     evaluations: usize,
+}
+
+/// Where a search ends.
+#[derive(Clone, Copy)]
+struct Bound {
+    at: f64,
+    /// Whether a length, the quantity itself or a tied one, reaches zero there.
+    vanishes: bool,
 }
 
 /// The functions at one point, and rounding's share of them.
@@ -196,18 +208,32 @@ impl<'a> Probe<'a> {
         } else {
             1.0 / length
         };
+        let nowhere = Bound {
+            at: nominal,
+            vanishes: false,
+        };
         let mut probe = Probe {
             cavity,
             slot,
             values,
             nominal,
             scale,
-            lowest: -REACH * scale,
-            highest: REACH * scale,
+            lowest: nowhere,
+            highest: nowhere,
             evaluations: 0,
         };
+        let reach = if probe.margin(nominal) > EDGE {
+            REACH
+        } else {
+            REACH_BACK
+        };
+        probe.lowest.at -= reach * scale;
+        probe.highest.at += reach * scale;
         if is_length || slot == Cavity::PUMP {
-            probe.lowest = 0.0;
+            probe.lowest = Bound {
+                at: 0.0,
+                vanishes: true,
+            };
         }
         probe.stop_where_tied_lengths_vanish();
         probe
@@ -226,10 +252,14 @@ impl<'a> Probe<'a> {
             }
             let here = tie.target.of(&self.values);
             let slope = (tie.target.of(&moved) - here) / step;
-            if slope < 0.0 {
-                self.highest = self.highest.min(self.nominal - here / slope);
-            } else if slope > 0.0 {
-                self.lowest = self.lowest.max(self.nominal - here / slope);
+            let bound = Bound {
+                at: self.nominal - here / slope,
+                vanishes: true,
+            };
+            if slope < 0.0 && bound.at < self.highest.at {
+                self.highest = bound;
+            } else if slope > 0.0 && bound.at > self.lowest.at {
+                self.lowest = bound;
             }
         }
     }
@@ -275,18 +305,13 @@ impl<'a> Probe<'a> {
     /// The first stable range in one direction: its near and its far end.
     fn search(&mut self, direction: f64) -> Option<(End, End)> {
         self.evaluations = 0;
-        let limit = if direction > 0.0 {
+        let Bound {
+            at: limit,
+            vanishes,
+        } = if direction > 0.0 {
             self.highest
         } else {
             self.lowest
-        };
-        let zero_ends = limit.abs() < REACH * self.scale;
-        let far = || {
-            if zero_ends {
-                End::Zero { at: limit }
-            } else {
-                End::Open
-            }
         };
         let mut near = self.nominal;
         let mut near_end = End::Open;
@@ -318,11 +343,17 @@ impl<'a> Probe<'a> {
                     touch: false,
                 };
             }
+            // Where the functions vary fast, the next step is as short as this one had to be.
+            width = 4.0 * (next - start).abs().min(width);
             start = next;
-            width *= 4.0;
         }
+        let far_end = if start == limit && vanishes {
+            End::Zero { at: limit }
+        } else {
+            End::Open
+        };
         self.is_stable_between(near, start)
-            .then(|| (near_end, far()))
+            .then_some((near_end, far_end))
     }
 
     fn is_stable_between(&mut self, a: f64, b: f64) -> bool {
@@ -340,12 +371,15 @@ impl<'a> Probe<'a> {
                 let values: [f64; DEGREE + 1] = std::array::from_fn(|k| samples[k][index]);
                 Proxy::new(low, high, &values)
             });
-            if !proxies.iter().all(Proxy::is_resolved)
-                && self.evaluations < BUDGET
-                && (stop - start).abs() > 1e-9 * self.scale
-            {
-                stop = 0.5 * (start + stop);
-                continue;
+            if !proxies.iter().all(Proxy::is_resolved) {
+                if self.evaluations >= BUDGET {
+                    // Nothing is claimed about what has not been searched.
+                    return (Vec::new(), start);
+                }
+                if (stop - start).abs() > 1e-9 * self.scale {
+                    stop = 0.5 * (start + stop);
+                    continue;
+                }
             }
             let straight = proxies.iter().all(Proxy::is_straight);
             if straight {
@@ -354,6 +388,9 @@ impl<'a> Probe<'a> {
             let mut events = Vec::new();
             for (index, proxy) in proxies.iter().enumerate() {
                 let plane = Plane::BOTH[index / 4];
+                if !straight && proxy.has_no_root() {
+                    continue;
+                }
                 let found = if straight {
                     self.root_of_line(index, low, high, proxy)
                 } else {

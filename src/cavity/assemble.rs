@@ -199,7 +199,7 @@ fn check_part(index: usize, part: &Part, values: &[f64], faults: &mut Vec<Fault>
     let name = &part.name;
     match &part.element {
         Element::Mirror(mirror) => {
-            if part.before != part.after {
+            if !part.before.bends_like(part.after, values) {
                 fault(
                     None,
                     format!("mirror {name} stands between two different media"),
@@ -252,7 +252,7 @@ fn check_slab(
             angle != 0.0
         }
     };
-    if tilted && part.before != part.after {
+    if tilted && !part.before.bends_like(part.after, values) {
         fault(
             None,
             format!("{name} is tilted and stands between two different media"),

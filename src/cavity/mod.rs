@@ -17,6 +17,7 @@ pub use part::{
     Coating, Element, Incidence, Index, Mirror, Opening, Part, Side, Slab, Substrate, ThermalLens,
     ThermalPlace,
 };
+pub(crate) use walk::slab_crossing;
 pub use walk::{End, Leg, Piece};
 
 use crate::numeric::Dual;

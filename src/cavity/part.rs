@@ -81,6 +81,11 @@ impl Index {
         }
     }
 
+    /// Whether rays see no difference between two media.
+    pub fn bends_like(self, other: Index, values: &[f64]) -> bool {
+        self.phase(values) == other.phase(values)
+    }
+
     /// Whether the group index is known.
     pub fn has_group(self) -> bool {
         matches!(

@@ -8,9 +8,9 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-use crate::cavity::{Book, Entry, Origin, Slot};
+use crate::cavity::Book;
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
-use crate::quantity::{self, Kind, Quantity, Spread};
+use crate::quantity::{self, General, Kind, Quantity, Spread, Value};
 
 /// A value given on the command line for an address, in place of the file's.
 #[derive(Clone, Debug)]
@@ -52,15 +52,6 @@ pub(super) struct Context<'t> {
     pub tied: Vec<String>,
     /// General tolerances by key.
     pub general: RefCell<HashMap<String, General>>,
-}
-
-/// A general tolerance.
-#[derive(Clone, Copy, Debug)]
-pub(super) enum General {
-    /// A share of the number.
-    Relative(f64),
-    /// To either side, in SI units.
-    Absolute(f64),
 }
 
 impl<'t> Context<'t> {
@@ -130,7 +121,7 @@ impl<'t> Context<'t> {
                 self.report(
                     Some(found.place.clone()),
                     format!("`{key}` must be a quantity, and this is {}", kind_of(value)),
-                    &format!("write it like {key} = \"{}\"", quantity::example(kind)),
+                    &format!("write it like {key} = \"{}\"", kind.example()),
                 );
                 return None;
             }
@@ -158,63 +149,39 @@ impl<'t> Context<'t> {
         }
     }
 
-    /// Enters a number into the address book.
-    #[allow(clippy::too_many_arguments, reason = "one call a number, all of it plain data")]
-    pub fn enter(
+    /// The spread of a quantity: its own or, where it has none, the general tolerance of its key.
+    pub fn spread(
         &self,
-        address: String,
-        part: Option<usize>,
-        key: &'static str,
+        key: &str,
         kind: Kind,
-        value: f64,
-        spread: Spread,
-        origin: Origin,
-        place: Option<Place>,
-    ) -> Slot {
-        let spread = match spread {
-            Spread::Exact if origin == Origin::Written => self.general_spread(key, kind, value),
-            own => own,
-        };
-        if let Some(place) = place {
-            self.places.borrow_mut().insert(address.clone(), place);
+        value: Value,
+        own: Spread,
+        place: &Place,
+    ) -> Spread {
+        if own != Spread::Exact {
+            return own;
         }
-        self.book.borrow_mut().enter(Entry {
-            address,
-            part,
-            key,
-            kind,
-            value,
-            spread,
-            origin,
-        })
-    }
-
-    /// The general tolerance of a number that has none of its own.
-    fn general_spread(&self, key: &str, kind: Kind, value: f64) -> Spread {
-        let general = self.general.borrow();
         let base = key
             .trim_end_matches("_tangential")
             .trim_end_matches("_sagittal");
+        let general = self.general.borrow();
         let Some(rule) = general.get(key).or_else(|| general.get(base)) else {
             return Spread::Exact;
         };
-        let reciprocal = matches!(kind, Kind::Radius | Kind::Face | Kind::Focal);
-        if reciprocal && value == 0.0 {
-            // A flat has no radius that could be off by a share or a length.
-            return Spread::Exact;
-        }
-        let written = if reciprocal { 1.0 / value } else { value };
-        let half = match rule {
-            General::Relative(share) => share * written.abs(),
-            General::Absolute(half) => *half,
-        };
-        if half == 0.0 {
-            return Spread::Exact;
-        }
-        Spread::Limits {
-            below: half,
-            above: half,
-        }
+        rule.about(value, kind).unwrap_or_else(|error| {
+            self.report(
+                Some(place.clone()),
+                format!(
+                    "the general tolerance does not fit `{key}`: {}",
+                    error.message
+                ),
+                error
+                    .help
+                    .as_deref()
+                    .unwrap_or("give it a tolerance of its own"),
+            );
+            Spread::Exact
+        })
     }
 }
 
@@ -231,10 +198,7 @@ pub(super) fn kind_of(value: &DeValue<'_>) -> &'static str {
 }
 
 /// The nearest known word to one that is not known.
-pub(super) fn nearest<'k>(
-    word: &str,
-    known: impl IntoIterator<Item = &'k str>,
-) -> Option<&'k str> {
+pub(super) fn nearest<'k>(word: &str, known: impl IntoIterator<Item = &'k str>) -> Option<&'k str> {
     known
         .into_iter()
         .map(|candidate| (strsim::jaro_winkler(word, candidate), candidate))

@@ -6,9 +6,9 @@ use std::ops::Range;
 use toml::de::{DeTable, DeValue};
 
 use super::context::{Context, Found, Raw, in_order, kind_of, nearest};
-use crate::cavity::{Origin, Slot};
+use crate::cavity::{Entry, Origin, Slot};
 use crate::diagnostic::Place;
-use crate::quantity::{Kind, Quantity, Spread, Value};
+use crate::quantity::{Kind, Quantity, Spread};
 
 /// Keys that say the same thing in different ways: a default for one of them gives way where the
 /// part names another.
@@ -82,7 +82,12 @@ impl<'c, 't> Fields<'c, 't> {
     }
 
     /// Reports every key that is not among the known ones.
-    pub fn refuse_unknown(&self, known: &[&str], what: &str, advice: impl Fn(&str) -> Option<&'static str>) {
+    pub fn refuse_unknown(
+        &self,
+        known: &[&str],
+        what: &str,
+        advice: impl Fn(&str) -> Option<&'static str>,
+    ) {
         for (key, span, _) in in_order(self.table) {
             if known.contains(&key) {
                 continue;
@@ -132,7 +137,8 @@ impl<'c, 't> Fields<'c, 't> {
 
     /// The place of a key's value, or of the whole table.
     pub fn place_of(&self, key: &str) -> Place {
-        self.find(key).map_or(self.place.clone(), |found| found.place)
+        self.find(key)
+            .map_or(self.place.clone(), |found| found.place)
     }
 
     /// Reports a key that must be there.
@@ -140,7 +146,7 @@ impl<'c, 't> Fields<'c, 't> {
         self.report(
             Some(self.place.clone()),
             format!("{what} needs `{key}`"),
-            &format!("add {key} = \"{}\"", crate::quantity::example(kind)),
+            &format!("add {key} = \"{}\"", kind.example()),
         );
     }
 
@@ -154,28 +160,35 @@ impl<'c, 't> Fields<'c, 't> {
     pub fn slot(&self, key: &'static str, kind: Kind) -> Option<Slot> {
         let found = self.find(key)?;
         let quantity = self.context.quantity(key, &found, kind)?;
-        let value = match quantity.value {
-            Value::Scalar(value) => value,
-            Value::Radius(value) | Value::Focal(value) => 1.0 / value,
-            Value::Flat => 0.0,
-            Value::PerLength(_) | Value::Brewster => {
-                self.report(
-                    Some(found.place),
-                    format!("`{key}` cannot be \"{}\" here", quantity.text),
-                    &format!("write it like \"{}\"", crate::quantity::example(kind)),
-                );
-                return None;
-            }
+        let reciprocal = matches!(kind, Kind::Radius | Kind::Face | Kind::Focal);
+        let value = if reciprocal {
+            quantity.value.curvature()
+        } else {
+            quantity.value.number()
         };
-        Some(self.enter(key, kind, value, quantity.spread, Origin::Written, Some(found.place)))
+        let Some(value) = value else {
+            self.report(
+                Some(found.place),
+                format!("`{key}` cannot be \"{}\" here", quantity.text),
+                &format!("write it like \"{}\"", kind.example()),
+            );
+            return None;
+        };
+        let place = found.place;
+        let own = quantity.spread;
+        let spread = self.context.spread(key, kind, quantity.value, own, &place);
+        let address = self.address(key);
+        self.context.places.borrow_mut().insert(address, place);
+        Some(self.enter(key, kind, value, spread, Origin::Written))
     }
 
     /// A quantity entered into the address book, or the format's own default for it.
     pub fn slot_or(&self, key: &'static str, kind: Kind, default: f64) -> Slot {
         self.slot(key, kind)
-            .unwrap_or_else(|| self.enter(key, kind, default, Spread::Exact, Origin::Implied, None))
+            .unwrap_or_else(|| self.enter(key, kind, default, Spread::Exact, Origin::Implied))
     }
 
+    /// Enters a number into the address book.
     pub fn enter(
         &self,
         key: &'static str,
@@ -183,11 +196,16 @@ impl<'c, 't> Fields<'c, 't> {
         value: f64,
         spread: Spread,
         origin: Origin,
-        place: Option<Place>,
     ) -> Slot {
-        let address = self.address(key);
-        self.context
-            .enter(address, self.part, key, kind, value, spread, origin, place)
+        self.context.book.borrow_mut().enter(Entry {
+            address: self.address(key),
+            part: self.part,
+            key,
+            kind,
+            value,
+            spread,
+            origin,
+        })
     }
 
     /// A text; nothing is said where the key is not there.

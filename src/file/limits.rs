@@ -21,7 +21,10 @@ pub(super) fn read_limit<'t>(
     let DeValue::Table(table) = value.get_ref() else {
         context.report(
             Some(place),
-            format!("a limit must be a table, and this is {}", kind_of(value.get_ref())),
+            format!(
+                "a limit must be a table, and this is {}",
+                kind_of(value.get_ref())
+            ),
             FORM,
         );
         return None;
@@ -34,7 +37,11 @@ pub(super) fn read_limit<'t>(
     );
     let Some((name, place)) = fields.text("of") else {
         if !fields.has("of") {
-            context.report(Some(fields.place.clone()), "a limit needs `of`, its measure", FORM);
+            context.report(
+                Some(fields.place.clone()),
+                "a limit needs `of`, its measure",
+                FORM,
+            );
         }
         return None;
     };
@@ -81,7 +88,7 @@ fn read_bounds(fields: &Fields<'_, '_>, kind: Kind) -> Option<Bounds> {
         return None;
     };
     if key != "between" {
-        let value = fields.quantity(key, kind)?.scalar()?;
+        let value = fields.quantity(key, kind)?.value.number()?;
         return Some(if key == "above" {
             Bounds::Above(value)
         } else {
@@ -98,7 +105,11 @@ fn read_bounds(fields: &Fields<'_, '_>, kind: Kind) -> Option<Bounds> {
                 fields.report(Some(found.place), "a bound must be a quantity", advice);
                 return None;
             }
-            fields.context.quantity("between", &found, kind)?.scalar()
+            fields
+                .context
+                .quantity("between", &found, kind)?
+                .value
+                .number()
         })
         .collect();
     match values?[..] {

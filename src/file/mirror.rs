@@ -59,7 +59,7 @@ fn read_fold(fields: &Fields<'_, '_>) -> Option<Side> {
         }
         return read_side(fields, "fold");
     }
-    let angle = fields.quantity("fold_plane", Kind::Angle)?.scalar()?;
+    let angle = fields.quantity("fold_plane", Kind::Angle)?.value.number()?;
     let quarter = angle / std::f64::consts::FRAC_PI_2;
     // Degrees in a file come out exact to rounding.
     if (quarter - quarter.round()).abs() > 1e-9 {
@@ -116,13 +116,19 @@ fn check_shares(fields: &Fields<'_, '_>, coating: &Coating, keys: [&str; 3]) {
     if all && (sum - 1.0).abs() > SHARES_WITHIN {
         fields.report(
             Some(place),
-            format!("reflectance, transmission and loss add up to {:.6} %, not 100 %", sum * 100.0),
+            format!(
+                "reflectance, transmission and loss add up to {:.6} %, not 100 %",
+                sum * 100.0
+            ),
             "write two of them; the third is the rest",
         );
     } else if sum > 1.0 + SHARES_WITHIN {
         fields.report(
             Some(place),
-            format!("the shares of the power add up to {:.6} %, more than all of it", sum * 100.0),
+            format!(
+                "the shares of the power add up to {:.6} %, more than all of it",
+                sum * 100.0
+            ),
             "reflectance, transmission and loss together are 100 %",
         );
     }

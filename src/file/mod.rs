@@ -20,8 +20,8 @@ use toml::de::{DeTable, DeValue};
 
 use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Slot};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
-use crate::quantity::{Kind, Spread};
-use context::{Context, General, Override, in_order, nearest};
+use crate::quantity::{self, Kind, QuantityError, Spread};
+use context::{Context, Override, in_order, nearest};
 use fields::Fields;
 
 /// Largest file that is read, in bytes.
@@ -212,11 +212,8 @@ fn read_file<'t>(
     ties::resolve_all(&context, &ties);
     report_unused_overrides(&context);
 
-    let (Some(form), Some(parts), true) = (
-        form,
-        parts,
-        context.diagnostics.borrow().is_empty(),
-    ) else {
+    let (Some(form), Some(parts), true) = (form, parts, context.diagnostics.borrow().is_empty())
+    else {
         return Err(context.diagnostics.take());
     };
     let spans = part_spans(top);
@@ -318,7 +315,11 @@ fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
         match value.get_ref() {
             DeValue::Table(inner) => Fields::new(fields.context, inner, value.span())
                 .refuse_unknown(&known[1..], &format!("a {kind}"), |_| None),
-            _ => fields.report(place, format!("the defaults of a {kind} are a table"), advice),
+            _ => fields.report(
+                place,
+                format!("the defaults of a {kind} are a table"),
+                advice,
+            ),
         }
     }
     Some(table)
@@ -326,10 +327,9 @@ fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
 
 fn read_general(fields: &Fields<'_, '_>) {
     let advice = "write it like general = { length = \"0.2 mm\", roc = \"1 %\" }";
-    let Some((table, span)) = fields.table("general", advice) else {
+    let Some((table, _)) = fields.table("general", advice) else {
         return;
     };
-    let general = Fields::new(fields.context, table, span).owned_by("general");
     for (key, key_span, value) in in_order(table) {
         let Some(kind) = toleranced_kind(key) else {
             let help = match nearest(key, TOLERANCED.iter().map(|(key, _)| *key)) {
@@ -344,33 +344,38 @@ fn read_general(fields: &Fields<'_, '_>) {
             continue;
         };
         let found = fields.context.found(value);
-        let relative = matches!(&found.raw, context::Raw::Text(text, _) if text.trim_end().ends_with('%'))
-            && kind != Kind::Ratio;
-        let kind = if relative { Kind::Ratio } else { kind };
-        let Some(half) = general
-            .quantity(key, kind)
-            .and_then(|quantity| quantity.scalar())
-        else {
-            continue;
+        let rule = match &found.raw {
+            context::Raw::Text(text, _) => quantity::parse_general(text, kind),
+            _ => Err(QuantityError {
+                span: 0..0,
+                message: "a general tolerance is a text".into(),
+                help: Some(advice.into()),
+            }),
         };
-        let rule = if relative {
-            General::Relative(half.abs())
-        } else {
-            General::Absolute(half.abs())
+        let rule = match rule {
+            Ok(rule) => rule,
+            Err(error) => {
+                fields.report(
+                    Some(found.place),
+                    format!("`{key}`: {}", error.message),
+                    error.help.as_deref().unwrap_or(advice),
+                );
+                continue;
+            }
         };
         fields.context.general.borrow_mut().insert(key.into(), rule);
     }
 }
 
-/// Keys that can have a general tolerance, with the kind of the tolerance itself.
+/// Keys that can have a general tolerance, with the kind of what they tolerate.
 const TOLERANCED: [(&str, Kind); 16] = [
     ("length", Kind::Length),
     ("thickness", Kind::Length),
-    ("roc", Kind::Length),
-    ("entrance", Kind::Length),
-    ("exit", Kind::Length),
-    ("back", Kind::Length),
-    ("focal", Kind::Length),
+    ("roc", Kind::Radius),
+    ("entrance", Kind::Face),
+    ("exit", Kind::Face),
+    ("back", Kind::Face),
+    ("focal", Kind::Focal),
     ("diameter", Kind::Length),
     ("aoi", Kind::Angle),
     ("pointing", Kind::Angle),
@@ -423,7 +428,10 @@ fn read_path<'t>(
     if items.len() > MOST_PARTS {
         fields.report(
             Some(fields.context.place(items[MOST_PARTS].span())),
-            format!("the path has {} parts; at most {MOST_PARTS} are read", items.len()),
+            format!(
+                "the path has {} parts; at most {MOST_PARTS} are read",
+                items.len()
+            ),
             "",
         );
         return None;
@@ -431,9 +439,7 @@ fn read_path<'t>(
     let parts: Vec<_> = items
         .into_iter()
         .enumerate()
-        .map(|(index, item)| {
-            parts::read_part(fields.context, item, Some(index), ambient, defaults)
-        })
+        .map(|(index, item)| parts::read_part(fields.context, item, Some(index), ambient, defaults))
         .collect();
     parts.into_iter().collect()
 }
@@ -444,7 +450,9 @@ fn report_unused_overrides(context: &Context<'_>) {
         let known = book.iter().map(|(_, entry)| entry.address.as_str());
         let help = match nearest(&set.address, known) {
             Some(near) => format!("did you mean {near}?"),
-            None => "an address is PART.key, such as M3.roc, or wavelength, temperature, pump".into(),
+            None => {
+                "an address is PART.key, such as M3.roc, or wavelength, temperature, pump".into()
+            }
         };
         let place = Place {
             source: set.place.source,
@@ -486,7 +494,12 @@ pub fn global_book(wavelength: f64) -> Book {
     let mut book = Book::default();
     for (key, kind, value, origin) in [
         ("wavelength", Kind::Length, wavelength, Origin::Written),
-        ("temperature", Kind::Temperature, ROOM_TEMPERATURE, Origin::Implied),
+        (
+            "temperature",
+            Kind::Temperature,
+            ROOM_TEMPERATURE,
+            Origin::Implied,
+        ),
         ("pump", Kind::Power, 0.0, Origin::Implied),
     ] {
         book.enter(crate::cavity::Entry {

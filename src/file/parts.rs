@@ -7,7 +7,7 @@ use super::context::{Context, in_order, kind_of};
 use super::fields::Fields;
 use super::mirror::read_mirror;
 use super::slab::read_slab;
-use crate::cavity::{Element, Index, Opening, Part, Slot};
+use crate::cavity::{Element, Index, Opening, Origin, Part, Slot};
 use crate::optics::{PerPlane, Plane};
 use crate::quantity::{Kind, Spread};
 
@@ -141,14 +141,18 @@ const LONGEST_NAME: usize = 24;
 fn advice(kind: &str, key: &str) -> Option<&'static str> {
     Some(match (kind, key) {
         ("slab", "length") => "a slab's size is `thickness`, square to its faces",
-        ("slab", "roc") => "a slab's faces are `entrance` and `exit`, convex or concave from outside",
+        ("slab", "roc") => {
+            "a slab's faces are `entrance` and `exit`, convex or concave from outside"
+        }
         ("slab", "n") | ("duct", "n") => "the refractive index is `index`",
         ("slab", "focal") => "a thermal lens is `thermal`, its dioptric power in 1/m",
         ("gap", "thickness") => "a gap's size is its `length` along the beam",
         ("gap", "index" | "n") => "what fills a gap is its `medium`: a number or a material",
         ("mirror", "radius") => "a mirror's radius of curvature is `roc`",
         ("mirror", "angle") => "the angle of incidence is `aoi`, half the angle between the beams",
-        ("mirror", "focal") => "a mirror is given by its radius of curvature `roc`, twice its focal length",
+        ("mirror", "focal") => {
+            "a mirror is given by its radius of curvature `roc`, twice its focal length"
+        }
         ("lens", "roc" | "thickness" | "index") => {
             "a thin lens has `focal`; a thick one is a slab with `entrance` and `exit`"
         }
@@ -170,7 +174,10 @@ pub(super) fn read_part<'t>(
     let DeValue::Table(table) = value.get_ref() else {
         context.report(
             Some(place),
-            format!("a part must be a table, and this is {}", kind_of(value.get_ref())),
+            format!(
+                "a part must be a table, and this is {}",
+                kind_of(value.get_ref())
+            ),
             "write it like { mirror = \"M1\", roc = \"100 mm\" }",
         );
         return None;
@@ -236,9 +243,9 @@ pub(super) fn read_part<'t>(
     };
     let clear = match *kind {
         // Coatings and polish end before the rim: common practice, no source.
-        "mirror" | "slab" => fields.slot("clear", Kind::Ratio).map_or(0.9, |slot| {
-            slot.of(&context.book.borrow().nominal())
-        }),
+        "mirror" | "slab" => fields
+            .slot("clear", Kind::Ratio)
+            .map_or(0.9, |slot| slot.of(&context.book.borrow().nominal())),
         _ => 1.0,
     };
     Some(Part {
@@ -291,14 +298,7 @@ pub(super) fn required(
     if !fields.has(key) {
         // A tied number may be left out: its value follows.
         if fields.context.is_tied(&fields.address(key)) {
-            return Some(fields.enter(
-                key,
-                kind,
-                0.0,
-                Spread::Exact,
-                crate::cavity::Origin::Tied,
-                None,
-            ));
+            return Some(fields.enter(key, kind, 0.0, Spread::Exact, Origin::Tied));
         }
         fields.missing(key, kind, what);
         return None;
@@ -356,7 +356,7 @@ pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: I
     let Some(quantity) = fields.context.quantity(key, &found, Kind::Number) else {
         return ambient;
     };
-    match quantity.scalar() {
+    match quantity.value.number() {
         Some(index) if index >= 1.0 => Index::Fixed {
             phase: index,
             group: None,

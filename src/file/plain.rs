@@ -54,7 +54,10 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
             context.quantity("sidebands", &context.found(frequency), Kind::Frequency);
         }
     }
-    if let Some((table, span)) = fields.table("source", "write it like { waist = \"350 um\", at = \"-600 mm\" }") {
+    if let Some((table, span)) = fields.table(
+        "source",
+        "write it like { waist = \"350 um\", at = \"-600 mm\" }",
+    ) {
         let source = Fields::new(context, table, span).owned_by("source");
         source.refuse_unknown(&SOURCE.map(|(key, _)| key), "a source", |_| None);
         for (key, kind) in SOURCE {
@@ -69,7 +72,8 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
             read_part(context, part, None, ambient, None);
         }
     }
-    if let Some((table, _)) = fields.table("tolerance", "write it like { shape = \"rectangular\" }") {
+    if let Some((table, _)) = fields.table("tolerance", "write it like { shape = \"rectangular\" }")
+    {
         read_tolerance(context, table);
     }
 }
@@ -84,7 +88,9 @@ fn read_tolerance<'t>(context: &Context<'t>, table: &'t DeTable<'t>) {
         |_| None,
     );
     fields.word("shape", &SHAPES);
-    if let Some((shapes, span)) = fields.table("shapes", "write it like { \"M3.roc\" = \"normal\" }") {
+    if let Some((shapes, span)) =
+        fields.table("shapes", "write it like { \"M3.roc\" = \"normal\" }")
+    {
         let shapes_fields = Fields::new(context, shapes, span).owned_by("tolerance.shapes");
         for (address, _, _) in in_order(shapes) {
             shapes_fields.word(address, &SHAPES);

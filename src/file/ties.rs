@@ -3,7 +3,7 @@
 use super::context::{Context, nearest};
 use crate::cavity::{Book, Slot, Tie};
 use crate::diagnostic::Place;
-use crate::quantity::{self, Kind, Spread, Value};
+use crate::quantity::{self, Kind, Spread};
 
 /// A tie as written, split into its sides.
 pub(super) struct Written {
@@ -26,13 +26,14 @@ const FORM: &str = "write it like \"d5.length = 146.68 mm - d2.length\" or \
                     \"d4.length = 0.5 * d3.length\", with spaces around + and -";
 
 /// Splits a tie at its signs; a sign stands between spaces, or first.
-pub(super) fn split(context: &Context<'_>, text: &str, place: Place, offset: usize) -> Option<Written> {
+pub(super) fn split(
+    context: &Context<'_>,
+    text: &str,
+    place: Place,
+    offset: usize,
+) -> Option<Written> {
     let Some((target, sum)) = text.split_once('=') else {
-        context.report(
-            Some(place),
-            "a tie says what follows what, with a =",
-            FORM,
-        );
+        context.report(Some(place), "a tie says what follows what, with a =", FORM);
         return None;
     };
     let start = target.len() + 1;
@@ -83,7 +84,10 @@ impl Written {
         if context.overridden(&self.target).is_some() {
             context.report(
                 Some(self.place.clone()),
-                format!("{} is tied and cannot be set to a value of its own", self.target),
+                format!(
+                    "{} is tied and cannot be set to a value of its own",
+                    self.target
+                ),
                 "set what it follows instead, or take the tie out of the file",
             );
             return None;
@@ -137,13 +141,13 @@ impl Written {
                 );
                 None
             }
-            Ok(quantity) => match quantity.value {
-                Value::Scalar(value) => Some(value),
-                _ => {
+            Ok(quantity) => {
+                let number = quantity.value.number();
+                if number.is_none() {
                     context.report(Some(place), "this is no constant to add", FORM);
-                    None
                 }
-            },
+                number
+            }
             Err(error) => {
                 context.report(
                     Some(place),
@@ -239,7 +243,10 @@ const AGREES_WITHIN: f64 = 1e-9;
 pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
     let mut book = context.book.borrow_mut();
     let before = book.clone();
-    let resolved: Option<Vec<Tie>> = written.iter().map(|tie| tie.resolve(context, &book)).collect();
+    let resolved: Option<Vec<Tie>> = written
+        .iter()
+        .map(|tie| tie.resolve(context, &book))
+        .collect();
     let Some(ties) = resolved else { return };
     for (i, tie) in ties.iter().enumerate() {
         if ties[..i].iter().any(|other| other.target == tie.target) {
@@ -254,7 +261,10 @@ pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
     if let Err(index) = book.set_ties(ties.clone()) {
         context.report(
             Some(written[index].place.clone()),
-            format!("{} follows itself, through this tie and others", written[index].target),
+            format!(
+                "{} follows itself, through this tie and others",
+                written[index].target
+            ),
             "take one of the ties out of the circle",
         );
         return;
@@ -277,7 +287,10 @@ pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
             if !moved {
                 context.report(
                     context.places.borrow().get(&old.address).cloned(),
-                    format!("{} is tied, and what is written for it does not agree", old.address),
+                    format!(
+                        "{} is tied, and what is written for it does not agree",
+                        old.address
+                    ),
                     "leave it out of its part; the tie gives its value",
                 );
             }

@@ -88,7 +88,7 @@ pub fn bracketed(mut f: impl FnMut(f64) -> f64, a: f64, b: f64) -> Option<f64> {
 
 /// Degree of the interpolants: enough for every polynomial that a handful of tied parts make,
 /// so that only transcendental dependences need their interval halved.
-pub const DEGREE: usize = 8;
+pub const DEGREE: usize = 16;
 
 /// The points at which a function is interpolated on [from, to].
 pub fn nodes(from: f64, to: f64) -> [f64; DEGREE + 1] {
@@ -146,6 +146,15 @@ impl Proxy {
     /// Whether the interpolant is the function to rounding.
     pub fn is_resolved(&self) -> bool {
         self.resolved
+    }
+
+    /// Whether the function stays clear of zero on the whole interval.
+    ///
+    /// No Chebyshev polynomial exceeds 1 there; the share left to rounding keeps touches.
+    pub fn has_no_root(&self) -> bool {
+        let constant = self.coefficients[0].abs();
+        let rest: f64 = self.coefficients[1..].iter().map(|c| c.abs()).sum();
+        constant > rest + 1e-9 * constant
     }
 
     /// Whether the function is a straight line to rounding.

@@ -2,8 +2,10 @@
 
 pub mod analysis;
 pub mod cavity;
+pub mod cli;
 pub mod diagnostic;
 pub mod file;
 pub mod numeric;
 pub mod optics;
 pub mod quantity;
+pub mod report;

@@ -1,3 +1,7 @@
-//! The `modewright` command.
+//! The `modewright` command; everything it does is a call of the library.
 
-fn main() {}
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    modewright::cli::run()
+}

@@ -1,0 +1,53 @@
+//! `check`: the verdict on a cavity file.
+
+use clap::Args;
+
+use super::{Answer, CavityFile, FAULT, FINE, NO, input};
+use crate::analysis;
+use crate::report::{describe, render};
+
+#[derive(Args)]
+pub(super) struct Typed {
+    #[command(flatten)]
+    cavity: CavityFile,
+    /// Print one JSON document, SI units, and nothing else
+    #[arg(long)]
+    json: bool,
+    /// Print the verdict only
+    #[arg(long, conflicts_with = "json")]
+    quiet: bool,
+}
+
+pub(super) fn run(typed: &Typed) -> Answer {
+    let loaded = match input::load(&typed.cavity) {
+        Ok(loaded) => loaded,
+        Err(answer) => return answer,
+    };
+    let check = analysis::check::check(&loaded.cavity);
+    let good = check.stable && check.limits.iter().all(|limit| limit.holds);
+    let status = if good { FINE } else { NO };
+    let name = typed.cavity.file.display().to_string();
+    let out = if typed.json {
+        match render::json::render("check", &name, &check) {
+            Ok(json) => json + "\n",
+            Err(error) => {
+                return Answer {
+                    out: String::new(),
+                    err: format!("error: the result does not fit into JSON: {error}\n"),
+                    status: FAULT,
+                };
+            }
+        }
+    } else {
+        let mut document = describe::check(&check);
+        if typed.quiet {
+            document.keep_verdict();
+        }
+        render::terminal::render(&document)
+    };
+    Answer {
+        out,
+        err: String::new(),
+        status,
+    }
+}

@@ -1,0 +1,137 @@
+//! The command line: what was typed, and which command answers it.
+//!
+//! Exit status: 0 done and all is well, 1 done and the answer is no, 2 the input is wrong (nothing
+//! on stdout), 3 an internal fault.
+
+mod check;
+mod input;
+
+use std::ffi::OsString;
+use std::io::{ErrorKind, Write};
+use std::panic::catch_unwind;
+use std::process::ExitCode;
+
+use anstream::{AutoStream, ColorChoice};
+use clap::{Args, Parser, Subcommand, ValueEnum};
+
+/// Done, and all is well.
+const FINE: u8 = 0;
+/// Done, and the answer is no.
+const NO: u8 = 1;
+/// The input is wrong.
+const WRONG_INPUT: u8 = 2;
+/// An internal fault.
+const FAULT: u8 = 3;
+
+/// Commands that are named but cannot be given yet.
+const LATER: [&str; 15] = [
+    "modes",
+    "response",
+    "couple",
+    "fit-beam",
+    "sweep",
+    "tolerance",
+    "tilt",
+    "losses",
+    "design",
+    "layout",
+    "report",
+    "live",
+    "new",
+    "materials",
+    "schema",
+];
+
+/// Design lasers and optical cavities: is it stable with real parts, how large is the beam on
+/// every optic, and what comes out?
+#[derive(Parser)]
+#[command(name = "modewright", version, about, max_term_width = 100)]
+struct Typed {
+    #[command(subcommand)]
+    command: Command,
+    /// When to use colours
+    #[arg(long, global = true, value_enum, default_value_t = Colour::Auto, value_name = "WHEN")]
+    color: Colour,
+}
+
+#[derive(Clone, Copy, ValueEnum)]
+enum Colour {
+    Auto,
+    Always,
+    Never,
+}
+
+#[derive(Subcommand)]
+enum Command {
+    /// Is the cavity stable, how far may each part move, how large is the beam everywhere?
+    Check(check::Typed),
+    #[command(external_subcommand)]
+    Other(Vec<OsString>),
+}
+
+/// What every command on a cavity file takes.
+#[derive(Args)]
+struct CavityFile {
+    /// The cavity file
+    file: std::path::PathBuf,
+    /// Replace a value and its spread, as in --set 'M3.roc=75 mm'; may be repeated
+    #[arg(long, value_name = "ADDRESS=VALUE")]
+    set: Vec<String>,
+}
+
+/// What a command has to say, and its exit status.
+struct Answer {
+    out: String,
+    err: String,
+    status: u8,
+}
+
+/// Runs the command line of this process.
+pub fn run() -> ExitCode {
+    let typed = Typed::parse();
+    let choice = match typed.color {
+        Colour::Auto => ColorChoice::Auto,
+        Colour::Always => ColorChoice::Always,
+        Colour::Never => ColorChoice::Never,
+    };
+    let answer = catch_unwind(|| match &typed.command {
+        Command::Check(typed) => check::run(typed),
+        Command::Other(words) => other(words),
+    });
+    let Ok(answer) = answer else {
+        return ExitCode::from(FAULT);
+    };
+    let told = say(AutoStream::new(std::io::stderr(), choice), &answer.err)
+        .and(say(AutoStream::new(std::io::stdout(), choice), &answer.out));
+    match told {
+        Ok(()) => ExitCode::from(answer.status),
+        // Whoever reads has read enough.
+        Err(error) if error.kind() == ErrorKind::BrokenPipe => ExitCode::from(answer.status),
+        Err(_) => ExitCode::from(FAULT),
+    }
+}
+
+fn say(mut stream: impl Write, text: &str) -> std::io::Result<()> {
+    stream.write_all(text.as_bytes())?;
+    stream.flush()
+}
+
+fn other(words: &[OsString]) -> Answer {
+    let name = words
+        .first()
+        .map(|word| word.to_string_lossy().into_owned())
+        .unwrap_or_default();
+    let err = if LATER.contains(&name.as_str()) {
+        format!("error: the command `{name}` is not available yet\n")
+    } else {
+        format!(
+            "error: there is no command `{}`; see `modewright help`\n",
+            name.escape_debug()
+        )
+    };
+    Answer {
+        out: String::new(),
+        err,
+        status: WRONG_INPUT,
+    }
+}

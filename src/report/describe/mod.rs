@@ -1,0 +1,5 @@
+//! One file per result: which of its figures a reader needs, in which order and units.
+
+mod check;
+
+pub use check::describe as check;

@@ -1,0 +1,7 @@
+//! Results for readers: what to say (`describe`), as a neutral document, and how it looks
+//! (`render`). Nothing here computes physics.
+
+pub mod describe;
+pub mod document;
+pub mod number;
+pub mod render;

@@ -1,0 +1,5 @@
+//! How a document or a result looks on a given medium.
+
+pub mod diagnostics;
+pub mod json;
+pub mod terminal;

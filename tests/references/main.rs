@@ -1,0 +1,6 @@
+//! Checks against the outside: one file a paper, handbook or set of published cavities. Every
+//! expected number names its source, and says whether its digits were read there ("published"),
+//! recalled ("from memory") or computed independently from a published problem ("recomputed").
+
+mod kogelnik_li;
+mod real_cavities;

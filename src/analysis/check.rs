@@ -387,10 +387,11 @@ impl View<'_> {
         };
         stations.push(self.station(part, None, pass, begins, entry, outside));
         let inside = inner_medium(part);
-        if at.length > 0.0 || !matches!(part.element, Element::Matrix { .. }) {
-            if let Some(inside) = inside {
-                stations.push(self.station(part, Some("exit"), pass, ends, exit, inside));
-            }
+        let is_thin = at.length == 0.0 && matches!(part.element, Element::Matrix { .. });
+        if let Some(inside) = inside
+            && !is_thin
+        {
+            stations.push(self.station(part, Some("exit"), pass, ends, exit, inside));
         }
     }
 
@@ -755,7 +756,7 @@ fn describe_range(cavity: &Cavity, found: QuantityRange, stability: Stability) -
                          beyond"
                     )),
                     End::Edge { .. } => {}
-                    End::Zero { at } if at == 0.0 => {
+                    End::Zero { at: 0.0 } => {
                         reasons.push(format!("{name}: stable all the way to zero"));
                     }
                     End::Zero { .. } => {

@@ -6,6 +6,7 @@
 
 pub mod beam;
 pub mod element;
+pub mod material;
 pub mod ray;
 
 /// One of the two transverse planes.

@@ -2,5 +2,7 @@
 //! expected number names its source, and says whether its digits were read there ("published"),
 //! recalled ("from memory") or computed independently from a published problem ("recomputed").
 
+mod indices;
 mod kogelnik_li;
 mod real_cavities;
+mod second_sources;

@@ -5,3 +5,4 @@ mod mode;
 mod ranges;
 mod second_type;
 mod spec;
+mod trace3d;

@@ -1,8 +1,10 @@
 //! The parts of a cavity: what they are made of, with every number behind a slot.
 
+use super::Cavity;
 use super::book::Slot;
 use crate::numeric::Real;
 use crate::optics::PerPlane;
+use crate::optics::material::Axis;
 
 /// To which side a beam is turned or displaced, as a pilot flying along it sees it.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -51,6 +53,13 @@ pub enum Index {
         /// Group index, where it is given.
         group: Option<Slot>,
     },
+    /// A material of the catalogue, at the cavity's wavelength.
+    Material {
+        /// Its principal direction along which the light is polarised.
+        axis: &'static Axis,
+        /// Its temperature, in kelvin.
+        temperature: Slot,
+    },
 }
 
 impl Index {
@@ -65,6 +74,9 @@ impl Index {
         match self {
             Index::Fixed { phase, .. } => T::constant(phase),
             Index::Slots { phase, .. } => phase.of(values),
+            Index::Material { axis, temperature } => {
+                axis.index(Cavity::WAVELENGTH.of(values), temperature.of(values))
+            }
         }
     }
 
@@ -77,6 +89,9 @@ impl Index {
             Index::Slots {
                 group: Some(group), ..
             } => group.of(values),
+            Index::Material { axis, temperature } => {
+                axis.group_index(Cavity::WAVELENGTH.of(values), temperature.of(values))
+            }
             _ => self.phase(values),
         }
     }
@@ -90,7 +105,9 @@ impl Index {
     pub fn has_group(self) -> bool {
         matches!(
             self,
-            Index::Fixed { group: Some(_), .. } | Index::Slots { group: Some(_), .. }
+            Index::Fixed { group: Some(_), .. }
+                | Index::Slots { group: Some(_), .. }
+                | Index::Material { .. }
         )
     }
 }

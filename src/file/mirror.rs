@@ -1,7 +1,8 @@
 //! Mirrors: shape, fold, coating and substrate.
 
 use super::fields::Fields;
-use super::parts::{read_medium, read_pair};
+use super::medium::read_medium;
+use super::parts::read_pair;
 use crate::cavity::{Coating, Element, Index, Mirror, Side, Substrate};
 use crate::diagnostic::Place;
 use crate::quantity::Kind;

@@ -5,6 +5,7 @@
 mod context;
 mod fields;
 mod limits;
+mod medium;
 mod mirror;
 mod parts;
 mod plain;
@@ -205,7 +206,7 @@ fn read_file<'t>(
     read_general(&fields);
     enter_globals(&fields);
     let form = read_form(&fields);
-    let ambient = parts::read_medium(&fields, "ambient", Index::VACUUM);
+    let ambient = medium::read_medium(&fields, "ambient", Index::VACUUM);
     let defaults = read_defaults(&fields);
     let parts = read_path(&fields, ambient, defaults);
     plain::read_plain(&fields, ambient);

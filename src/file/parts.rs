@@ -5,6 +5,7 @@ use toml::de::{DeTable, DeValue};
 
 use super::context::{Context, in_order, kind_of};
 use super::fields::Fields;
+use super::medium::{read_index, read_medium};
 use super::mirror::read_mirror;
 use super::slab::read_slab;
 use crate::cavity::{Element, Index, Opening, Origin, Part, Slot};
@@ -333,64 +334,6 @@ pub(super) fn read_pair(
         });
     }
     required(fields, both, kind, what).map(PerPlane::both)
-}
-
-/// The medium of a gap or of the surroundings: a number or the name of a material.
-pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: Index) -> Index {
-    let Some(found) = fields.find(key) else {
-        return ambient;
-    };
-    if let super::context::Raw::Text(text, _) = &found.raw {
-        if text == "vacuum" {
-            return Index::VACUUM;
-        }
-        if text.starts_with(|c: char| c.is_alphabetic()) {
-            fields.report(
-                Some(found.place),
-                format!("the material \"{text}\" is not available yet"),
-                "write its refractive index as a number, such as 1.33, or \"vacuum\"",
-            );
-            return ambient;
-        }
-    }
-    let Some(quantity) = fields.context.quantity(key, &found, Kind::Number) else {
-        return ambient;
-    };
-    match quantity.value.number() {
-        Some(index) if index >= 1.0 => Index::Fixed {
-            phase: index,
-            group: None,
-        },
-        _ => {
-            fields.report(
-                Some(found.place),
-                format!("`{key}` cannot be \"{}\"", quantity.text),
-                "a refractive index is 1 or more",
-            );
-            ambient
-        }
-    }
-}
-
-/// `index` and `group_index`.
-pub(super) fn read_index(fields: &Fields<'_, '_>, what: &str) -> Option<Index> {
-    let phase = required(fields, "index", Kind::Number, what)?;
-    let group = fields.slot("group_index", Kind::Number);
-    let nominal = fields.context.book.borrow().nominal();
-    let mut good = true;
-    for (key, slot) in [("index", Some(phase)), ("group_index", group)] {
-        if let Some(slot) = slot
-            && slot.of(&nominal) < 1.0
-        {
-            good = false;
-            fields.report(
-                Some(fields.place_of(key)),
-                format!("`{key}` must be 1 or more"),
-                "a transparent medium slows light down; check the digits",
-            );
-        }
-    }
-    good.then_some(Index::Slots { phase, group })
 }
 
 fn read_duct(fields: &Fields<'_, '_>) -> Option<Element> {

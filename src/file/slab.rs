@@ -1,14 +1,15 @@
 //! Slabs: plates, rods and crystals with their faces and thermal lenses.
 
 use super::fields::Fields;
+use super::medium::read_slab_medium;
 use super::mirror::read_side;
-use super::parts::{read_index, read_pair, required};
+use super::parts::{read_pair, required};
 use crate::cavity::{Element, Incidence, Side, Slab, ThermalLens, ThermalPlace};
 use crate::quantity::{Kind, Value};
 
 pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
     let thickness = required(fields, "thickness", Kind::Length, "a slab");
-    let index = read_slab_index(fields);
+    let index = read_slab_medium(fields);
     let incidence = read_incidence(fields);
     let shift = if fields.has("shift") {
         read_side(fields, "shift")
@@ -18,7 +19,6 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
     let entrance = fields.slot_or("entrance", Kind::Face, 0.0);
     let exit = fields.slot_or("exit", Kind::Face, 0.0);
     let thermal = read_thermal(fields);
-    fields.slot("temperature", Kind::Temperature);
     if fields.has("loss") {
         fields.quantity("loss", Kind::Loss);
     }
@@ -42,18 +42,6 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
         exit,
         thermal,
     }))
-}
-
-fn read_slab_index(fields: &Fields<'_, '_>) -> Option<crate::cavity::Index> {
-    if let Some((name, place)) = fields.text("material") {
-        fields.report(
-            Some(place),
-            format!("the material \"{name}\" is not available yet"),
-            "write its refractive index instead: index = 1.45, and group_index for the FSR",
-        );
-        return None;
-    }
-    read_index(fields, "a slab")
 }
 
 fn read_incidence(fields: &Fields<'_, '_>) -> Incidence {

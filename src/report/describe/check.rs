@@ -147,7 +147,9 @@ fn optics(document: &mut Document, stations: &[Station]) {
     let radius = common(spots().map(|spot| spot.spot_m), &LENGTHS, 10.0);
     let place = common(shown.iter().map(|station| station.at_m), &LENGTHS, 1.0);
     let bend = common(
-        spots().map(|spot| 1.0 / spot.curvature_per_m.abs().max(1e-6)),
+        spots()
+            .map(|spot| 1.0 / spot.curvature_per_m)
+            .filter(|radius| radius.abs() < PLANE),
         &LENGTHS,
         1.0,
     );
@@ -216,12 +218,16 @@ fn decimals(scale: Scale) -> usize {
     }
 }
 
+/// A wavefront of a larger radius, in metres, is plane for whoever reads it.
+const PLANE: f64 = 1e5;
+
 fn wavefront(curvature_per_m: f64, scale: Scale) -> String {
-    let radius = 1.0 / curvature_per_m / scale.size;
-    if !radius.is_finite() || radius.abs() >= 1e6 {
-        return "plane".into();
+    let radius = 1.0 / curvature_per_m;
+    if radius.is_finite() && radius.abs() < PLANE {
+        significant(radius / scale.size, 4)
+    } else {
+        "plane".into()
     }
-    significant(radius, 4)
 }
 
 fn waists(document: &mut Document, waists: &[Waist]) {

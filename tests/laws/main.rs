@@ -3,6 +3,7 @@
 
 mod mode;
 mod ranges;
+mod second_road;
 mod second_type;
 mod spec;
 mod trace3d;

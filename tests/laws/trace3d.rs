@@ -33,8 +33,9 @@ pub const DOWN: f64 = 1.5 * PI;
 /// 3e-11. The rest is reserve; a wrong cosine or sign is off by a thousandth or more.
 pub const ACCURACY: f64 = 1e-9;
 
-/// Displacement of the neighbouring rays, relative to the tightest length on the bench.
-const STEP: f64 = 1e-3;
+/// Displacement of the neighbouring rays, relative to the tightest length on the bench: small enough
+/// for a face met near the critical angle, where aberrations are strong.
+const STEP: f64 = 2e-4;
 
 /// The carried frame: t to the pilot's left, s up, k ahead; t = s × k.
 #[derive(Clone, Copy, Debug, PartialEq)]

@@ -673,8 +673,8 @@ fn data_cautions(cavity: &Cavity) -> Vec<String> {
         .collect();
     if some_toleranced && !perfect.is_empty() {
         cautions.push(format!(
-            "{} is flat without a tolerance and counts as perfect, while other radii have one; \
-             write \"flat ± 0.003 1/m\"",
+            "flat without a tolerance, and so counted as perfect, while other radii have one: {}; \
+             a tolerance of a flat is written \"flat ± 0.003 1/m\"",
             list(&perfect)
         ));
     }

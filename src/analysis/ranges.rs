@@ -149,7 +149,7 @@ pub fn stable_range(cavity: &Cavity, slot: Slot) -> QuantityRange {
 const REACH: f64 = 1e9;
 
 /// How far the search for a way back to stability goes: nobody moves a mirror further.
-const REACH_BACK: f64 = 100.0;
+const REACH_BACK: f64 = 10.0;
 
 /// Evaluations spent on one direction of one quantity before the search gives up.
 const BUDGET: usize = 8_000;

@@ -63,6 +63,15 @@ pub fn significant(x: f64, digits: usize) -> String {
     minus(format!("{x:.decimals$}"))
 }
 
+/// The same without zeros at the end, for numbers that somebody wrote.
+pub fn plain(x: f64, digits: usize) -> String {
+    let text = significant(x, digits);
+    if !text.contains('.') || text.contains('e') {
+        return text;
+    }
+    text.trim_end_matches('0').trim_end_matches('.').into()
+}
+
 /// A number with the given count of decimals.
 pub fn fixed(x: f64, decimals: usize) -> String {
     let text = format!("{x:.decimals$}");
@@ -89,6 +98,8 @@ mod tests {
         assert_eq!(significant(9.9996, 4), "10.00");
         assert_eq!(significant(1.2e-9, 3), "1.20e−9");
         assert_eq!(fixed(-0.0001, 2), "0.00");
+        assert_eq!(plain(1064.0, 6), "1064");
+        assert_eq!(plain(1200.0, 2), "1200");
     }
 
     #[test]

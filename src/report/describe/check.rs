@@ -6,7 +6,7 @@ use crate::cavity::{Bounds, Presence};
 use crate::optics::Plane;
 use crate::quantity::Kind;
 use crate::report::document::{Block, Document, Table, Tone};
-use crate::report::number::{ANGLES, LENGTHS, Scale, common, fixed, significant};
+use crate::report::number::{ANGLES, LENGTHS, Scale, common, fixed, plain, significant};
 
 /// The result of a check as a document.
 pub fn describe(check: &Check) -> Document {
@@ -55,6 +55,7 @@ fn verdict(document: &mut Document, check: &Check) {
         let limits = match (check.limits.len(), failing) {
             (0, _) => String::new(),
             (1, 0) => "; its limit holds".into(),
+            (2, 0) => "; both limits hold".into(),
             (n, 0) => format!("; all {n} limits hold"),
             (n, k) => format!("; {k} of {n} limits fail"),
         };
@@ -99,17 +100,20 @@ fn verdict(document: &mut Document, check: &Check) {
 
 fn summary(document: &mut Document, check: &Check) {
     let trip = &check.round_trip;
+    document.text(format!(
+        "{} cavity, {} nm, {} mm around, FSR {}",
+        check.form,
+        plain(check.wavelength_m * 1e9, 6),
+        plain(trip.length_m * 1e3, 6),
+        frequency(trip.fsr_hz),
+    ));
     let horizontal = if check.tangential_is_horizontal {
-        "t = tangential = horizontal"
+        "horizontal"
     } else {
-        "t = tangential = vertical"
+        "vertical"
     };
     document.text(format!(
-        "{} cavity, {} nm, {} mm around, FSR {}; {horizontal}, s = sagittal",
-        check.form,
-        significant(check.wavelength_m * 1e9, 6),
-        significant(trip.length_m * 1e3, 6),
-        frequency(trip.fsr_hz),
+        "t = tangential, here the {horizontal} plane; s = sagittal"
     ));
 }
 
@@ -340,8 +344,8 @@ fn range_table(ranges: &[Range]) -> Table {
         table.rows.push(vec![
             range.quantity.clone(),
             value(found.nominal, range.kind),
-            end(low, range.kind),
-            end(high, range.kind),
+            end(low, range),
+            end(high, range),
             room(range),
         ]);
     }
@@ -353,31 +357,52 @@ fn from_radius_order(curvature: f64) -> bool {
     curvature != 0.0
 }
 
+/// A length in millimetres, or in metres where those would be too many.
+fn length(x: f64) -> String {
+    if x.abs() < 100.0 {
+        format!("{} mm", plain(x * 1e3, 5))
+    } else {
+        format!("{} m", plain(x, 5))
+    }
+}
+
 /// A value of a quantity in the unit of its kind.
 fn value(x: f64, kind: Kind) -> String {
     match kind {
-        Kind::Length => format!("{} mm", significant(x * 1e3, 5)),
+        Kind::Length => length(x),
         Kind::Radius if x == 0.0 => "flat".into(),
         Kind::Face if x == 0.0 => "flat".into(),
         Kind::Face => {
             let sense = if x > 0.0 { "convex" } else { "concave" };
-            format!("{} mm {sense}", significant(1e3 / x.abs(), 5))
+            format!("{} {sense}", length(1.0 / x.abs()))
         }
         Kind::Radius | Kind::Focal if x.abs() < 1e-9 => "flat".into(),
-        Kind::Radius | Kind::Focal => format!("{} mm", significant(1e3 / x, 5)),
-        Kind::Power => format!("{} W", significant(x, 5)),
-        _ => format!("{} 1/m", significant(x, 5)),
+        Kind::Radius | Kind::Focal => length(1.0 / x),
+        Kind::Power => format!("{} W", plain(x, 5)),
+        _ => format!("{} 1/m", plain(x, 5)),
     }
 }
 
-fn end(end: End, kind: Kind) -> String {
+fn end(end: End, range: &Range) -> String {
     match end {
         End::Edge { at, touch, .. } => {
             let touch = if touch { " (touch)" } else { "" };
-            format!("{}{touch}", value(at, kind))
+            format!("{}{touch}", beyond_flat(at, range))
         }
-        End::Zero { at } => value(at, kind),
+        End::Zero { at } => value(at, range.kind),
         End::Open => "any".into(),
+    }
+}
+
+/// A value of a quantity; on the other side of flat than now, the sense is said in words.
+fn beyond_flat(at: f64, range: &Range) -> String {
+    let other_side = at * range.found.nominal <= 0.0 && at.abs() > 1e-9;
+    match range.kind {
+        Kind::Radius if other_side => {
+            let sense = if at > 0.0 { "concave" } else { "convex" };
+            format!("{} {sense}", length(1.0 / at.abs()))
+        }
+        kind => value(at, kind),
     }
 }
 
@@ -438,8 +463,8 @@ fn way_back(document: &mut Document, ranges: &[Range]) {
         table.rows.push(vec![
             range.quantity.clone(),
             value(range.found.nominal, range.kind),
-            end(low, range.kind),
-            end(high, range.kind),
+            end(low, range),
+            end(high, range),
             nearest.map_or("–".into(), |at| {
                 change(range.found.nominal, at, range.kind)
             }),
@@ -466,39 +491,38 @@ fn change(from: f64, to: f64, kind: Kind) -> String {
 
 fn round_trip(document: &mut Document, check: &Check) {
     document.heading("Round trip");
-    let mut table = Table::new(&[
+    let mut phases = Table::new(&[
         "<plane",
         "half-trace",
         "margin",
         "Gouy phase\n°",
-        "folded\n°",
-        "A",
-        "B\nm",
-        "C\n1/m",
-        "D",
+        "folded, flips\ncounted, °",
     ]);
+    let mut matrices = Table::new(&["<matrix", "A", "B\nm", "C\n1/m", "D"]);
     for (name, plane) in PLANES {
         let plane = check.planes.get(plane);
         let degrees = |x: Option<f64>| x.map_or("–".into(), |x| fixed(x.to_degrees(), 2));
-        let [[a, b], [c, d]] = plane.matrix;
-        let mut row = vec![
+        phases.rows.push(vec![
             name.to_string(),
             significant(plane.half_trace, 4),
             significant(plane.margin, 3),
             degrees(plane.gouy_rad),
             degrees(plane.gouy_folded_rad),
-        ];
+        ]);
+        let [[a, b], [c, d]] = plane.matrix;
+        let mut row = vec![name.to_string()];
         row.extend([a, b, c, d].map(|x| significant(x, 4)));
-        table.rows.push(row);
+        matrices.rows.push(row);
     }
-    document.push(Block::Table(table));
+    document.push(Block::Table(phases));
+    document.push(Block::Table(matrices));
     let trip = &check.round_trip;
     document.text(format!(
         "  {} reflections; {} mm geometric, {} mm optical, {} mm group",
         trip.reflections,
-        significant(trip.length_m * 1e3, 6),
-        significant(trip.optical_m * 1e3, 6),
-        significant(trip.group_m * 1e3, 6),
+        plain(trip.length_m * 1e3, 6),
+        plain(trip.optical_m * 1e3, 6),
+        plain(trip.group_m * 1e3, 6),
     ));
 }
 
@@ -511,20 +535,20 @@ fn limits(document: &mut Document, limits: &[LimitCheck]) {
     for check in limits {
         let presence = check.limit.measure.presence();
         let wanted = match check.limit.bounds {
-            Bounds::Above(low) => format!("above {}", measured(low, presence)),
-            Bounds::Below(high) => format!("below {}", measured(high, presence)),
+            Bounds::Above(low) => format!("above {}", measured(low, presence, plain)),
+            Bounds::Below(high) => format!("below {}", measured(high, presence, plain)),
             Bounds::Between(low, high) => format!(
                 "{} to {}",
-                measured(low, presence),
-                measured(high, presence)
+                measured(low, presence, plain),
+                measured(high, presence, plain)
             ),
         };
         table.rows.push(vec![
             if check.holds { "holds" } else { "FAILS" }.into(),
             check.of.clone(),
-            check
-                .value
-                .map_or("no value".into(), |value| measured(value, presence)),
+            check.value.map_or("no value".into(), |value| {
+                measured(value, presence, significant)
+            }),
             wanted,
         ]);
     }
@@ -532,14 +556,14 @@ fn limits(document: &mut Document, limits: &[LimitCheck]) {
 }
 
 /// The number of a measure with its unit.
-fn measured(x: f64, presence: Presence) -> String {
+fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> String) -> String {
     match presence {
-        Presence::Number => significant(x, 4),
+        Presence::Number => digits(x, 4),
         Presence::Length | Presence::Position => {
             let scale = common([x], &LENGTHS, 1.0);
-            format!("{} {}", significant(x / scale.size, 4), scale.symbol)
+            format!("{} {}", digits(x / scale.size, 4), scale.symbol)
         }
-        Presence::Angle => format!("{} rad", significant(x, 4)),
+        Presence::Angle => format!("{} rad", digits(x, 4)),
         Presence::Frequency => frequency(x),
     }
 }

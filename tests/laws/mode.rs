@@ -101,18 +101,8 @@ fn stable_cavity() -> impl Strategy<Value = Spec> {
     any_cavity(MOST_PARTS).prop_filter("stable", |spec| stable(spec).is_some())
 }
 
-fn config() -> ProptestConfig {
-    ProptestConfig {
-        cases: 400,
-        max_local_rejects: 4_000_000,
-        max_global_rejects: 4_000_000,
-        failure_persistence: None,
-        ..ProptestConfig::default()
-    }
-}
-
 proptest! {
-    #![proptest_config(config())]
+    #![proptest_config(crate::config(400))]
 
     #[test]
     fn every_leg_has_determinant_one(spec in any_cavity(MOST_PARTS)) {

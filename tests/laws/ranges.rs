@@ -94,13 +94,7 @@ fn hold(cavity: &Cavity) -> Result<(), TestCaseError> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig {
-        cases: 120,
-        max_local_rejects: 1_000_000,
-        max_global_rejects: 1_000_000,
-        failure_persistence: None,
-        ..ProptestConfig::default()
-    })]
+    #![proptest_config(crate::config(120))]
 
     #[test]
     fn stable_cavities_have_their_edges_where_a_scan_finds_them(

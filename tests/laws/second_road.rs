@@ -200,13 +200,7 @@ fn spaced(spec: Spec) -> Spec {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig {
-        cases: 200,
-        failure_persistence: None,
-        max_local_rejects: 100_000,
-        max_global_rejects: 100_000,
-        ..ProptestConfig::default()
-    })]
+    #![proptest_config(crate::config(400))]
 
     #[test]
     fn rays_in_three_dimensions_give_the_same_round_trip(

@@ -39,13 +39,7 @@ fn measures(cavity: &Cavity) -> Vec<Measure> {
 const STEP: f64 = 1e-5;
 
 proptest! {
-    #![proptest_config(ProptestConfig {
-        cases: 100,
-        max_local_rejects: 1_000_000,
-        max_global_rejects: 1_000_000,
-        failure_persistence: None,
-        ..ProptestConfig::default()
-    })]
+    #![proptest_config(crate::config(100))]
 
     #[test]
     fn dual_numbers_agree_with_plain_ones(

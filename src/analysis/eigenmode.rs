@@ -237,7 +237,7 @@ impl Eigenmode {
 fn first_reflection(cavity: &Cavity, values: &[f64]) -> PerPlane<RayMatrix<f64>> {
     let mut first = PerPlane::both(RayMatrix::identity());
     if cavity.form() == Form::Standing {
-        cavity.walk_first(values, |leg| first = leg.matrix);
+        cavity.walk_first(values, |leg| first = leg.matrix());
     }
     debug_assert!(matches!(cavity.parts()[0].element, Element::Mirror(_)));
     first

@@ -92,7 +92,8 @@ impl<T: Real> Envelope<T> {
                     envelope.length = envelope.length + part.length;
                 }
             }
-            let next = beam.zip(leg.matrix, Beam::after);
+            let matrix = leg.matrix();
+            let next = beam.zip(matrix, Beam::after);
             let phase = match leg.piece {
                 Piece::Stretch(stretch) => {
                     envelope.stretches.push(Inside {
@@ -106,16 +107,16 @@ impl<T: Real> Envelope<T> {
                     part.at_exit = next;
                     stretch.zip(beam, Stretch::gouy_phase)
                 }
-                Piece::Face(End::Entrance) => {
+                Piece::Face(End::Entrance, _) => {
                     part.entered = next;
                     PerPlane::both(zero)
                 }
-                Piece::Face(End::Exit) => {
+                Piece::Face(End::Exit, _) => {
                     part.at_exit = beam;
                     PerPlane::both(zero)
                 }
-                Piece::Thin => beam.zip(leg.matrix, Beam::gouy_phase),
-                Piece::Reflection => PerPlane::both(zero),
+                Piece::Given(_) => beam.zip(matrix, Beam::gouy_phase),
+                Piece::Kick(_) | Piece::Opening => PerPlane::both(zero),
             };
             envelope.gouy_phase = envelope.gouy_phase.zip(phase, |a, b| a + b);
             part.left = next;

@@ -14,17 +14,20 @@ use crate::optics::element::mirror;
 use crate::optics::element::surface::Crossing;
 use crate::optics::ray::RayMatrix;
 
-/// What a leg of the walk is within its part.
+/// What a leg of the walk does to rays, in the file's planes, flips left out.
 #[derive(Clone, Copy, Debug)]
 pub enum Piece<T> {
-    /// A thin element: a lens, an opening, a given matrix, a lumped thermal lens.
-    Thin,
-    /// A mirror's reflection, or half of it at the end of a standing cavity.
-    Reflection,
+    /// A thin element that adds C·x to the reduced angle, C in 1/m: a mirror (half of it at the
+    /// end of a standing cavity), a lens, a lumped thermal lens.
+    Kick(PerPlane<T>),
     /// A face of a slab.
-    Face(End),
-    /// A stretch through a medium, in either plane; lengths and index are the same in both.
+    Face(End, PerPlane<RayMatrix<T>>),
+    /// A stretch through a medium; lengths and index are the same in both planes.
     Stretch(PerPlane<Stretch<T>>),
+    /// A given matrix.
+    Given(PerPlane<RayMatrix<T>>),
+    /// Nothing: an opening.
+    Opening,
 }
 
 /// Which face of a slab.
@@ -41,10 +44,8 @@ pub enum End {
 pub struct Leg<T> {
     /// Index of the part it belongs to.
     pub part: usize,
-    /// What it is.
+    /// What it does.
     pub piece: Piece<T>,
-    /// Ray matrices in the file's planes, flips left out.
-    pub matrix: PerPlane<RayMatrix<T>>,
 }
 
 impl<T: Real> Leg<T> {
@@ -53,6 +54,22 @@ impl<T: Real> Leg<T> {
         match &self.piece {
             Piece::Stretch(s) => s.tangential.length,
             _ => T::constant(0.0),
+        }
+    }
+
+    /// Its ray matrices.
+    pub fn matrix(&self) -> PerPlane<RayMatrix<T>> {
+        self.after(PerPlane::both(RayMatrix::identity()))
+    }
+
+    /// Ray matrices followed by this leg.
+    #[inline(always)]
+    pub fn after(&self, before: PerPlane<RayMatrix<T>>) -> PerPlane<RayMatrix<T>> {
+        match self.piece {
+            Piece::Kick(c) => before.zip(c, RayMatrix::kicked),
+            Piece::Stretch(stretch) => before.zip(stretch, |m, stretch| stretch.after(m)),
+            Piece::Face(_, m) | Piece::Given(m) => before.zip(m, RayMatrix::then),
+            Piece::Opening => before,
         }
     }
 }
@@ -82,7 +99,7 @@ impl Cavity {
     pub fn one_way<T: Real>(&self, values: &[T]) -> PerPlane<RayMatrix<T>> {
         let mut product = PerPlane::both(RayMatrix::identity());
         self.walk(values, |leg| {
-            product = product.zip(leg.matrix, RayMatrix::then);
+            product = leg.after(product);
         });
         product
     }
@@ -96,30 +113,18 @@ impl Cavity {
         visit: &mut impl FnMut(Leg<T>),
     ) {
         let part = &self.parts[index];
-        let mut leg = |piece, matrix| {
-            visit(Leg {
-                part: index,
-                piece,
-                matrix,
-            });
-        };
+        let mut leg = |piece| visit(Leg { part: index, piece });
         match &part.element {
             Element::Mirror(mirror) => {
                 let power = mirror_power(mirror, part.swapped, part.before.phase(values), values);
-                let kick = power.map(|p| RayMatrix::kick(p * -share));
-                leg(Piece::Reflection, kick);
+                leg(Piece::Kick(power.map(|p| p * -share)));
             }
             Element::Gap { length, medium } => {
                 let stretch = Stretch::uniform(length.of(values), medium.phase(values));
-                let propagation = RayMatrix::propagation(stretch.length / stretch.index);
-                leg(
-                    Piece::Stretch(PerPlane::both(stretch)),
-                    PerPlane::both(propagation),
-                );
+                leg(Piece::Stretch(PerPlane::both(stretch)));
             }
             Element::Lens { power } => {
-                let kick = power.map(|slot| RayMatrix::kick(-slot.of(values)));
-                leg(Piece::Thin, kick);
+                leg(Piece::Kick(power.map(|slot| -slot.of(values))));
             }
             Element::Slab(slab) => walk_slab(
                 slab,
@@ -138,11 +143,11 @@ impl Cavity {
                 let stretch = strength.map(|slot| Stretch {
                     length: length.of(values),
                     index: index.phase(values),
-                    strength_squared: slot.of(values).squared() * sign,
+                    strength_squared: Some(slot.of(values).squared() * sign),
                 });
-                leg(Piece::Stretch(stretch), stretch.map(Stretch::matrix));
+                leg(Piece::Stretch(stretch));
             }
-            Element::Aperture => leg(Piece::Thin, PerPlane::both(RayMatrix::identity())),
+            Element::Aperture => leg(Piece::Opening),
             Element::Matrix { entries, .. } => {
                 let matrix = entries.map(|[a, b, c, d]| RayMatrix {
                     a: T::constant(a),
@@ -150,7 +155,7 @@ impl Cavity {
                     c: T::constant(c),
                     d: T::constant(d),
                 });
-                leg(Piece::Thin, matrix);
+                leg(Piece::Given(matrix));
             }
         }
     }
@@ -181,7 +186,7 @@ fn walk_slab<T: Real>(
     swapped: bool,
     outside: T,
     values: &[T],
-    leg: &mut impl FnMut(Piece<T>, PerPlane<RayMatrix<T>>),
+    leg: &mut impl FnMut(Piece<T>),
 ) {
     let own = |pair: PerPlane<RayMatrix<T>>| if swapped { pair.swapped() } else { pair };
     let crossing = slab_crossing(slab, outside, values);
@@ -190,44 +195,31 @@ fn walk_slab<T: Real>(
 
     // Convex from outside: the entrance has its centre on the far side, the exit on the near side.
     let entrance = PerPlane::both(slab.entrance.of(values));
-    leg(Piece::Face(End::Entrance), own(crossing.matrices(entrance)));
+    leg(Piece::Face(End::Entrance, own(crossing.matrices(entrance))));
 
-    let mut straight = |stretch: PerPlane<Stretch<T>>| {
-        leg(Piece::Stretch(stretch), stretch.map(Stretch::matrix));
-    };
+    let whole = Piece::Stretch(PerPlane::both(uniform));
+    let half = Piece::Stretch(PerPlane::both(uniform.part(0.5)));
     match &slab.thermal {
-        None => straight(PerPlane::both(uniform)),
+        None => leg(whole),
         Some(lens) => {
             let power = thermal_power(lens, values);
-            let kick = power.map(|p| RayMatrix::kick(-p));
-            let whole = PerPlane::both(uniform);
-            let half = PerPlane::both(uniform.part(0.5));
+            let kick = Piece::Kick(power.map(|p| -p));
             match lens.place {
-                ThermalPlace::Spread => straight(power.map(|p| Stretch {
-                    strength_squared: p / (crossing.index_to * path),
+                ThermalPlace::Spread => leg(Piece::Stretch(power.map(|p| Stretch {
+                    strength_squared: Some(p / (crossing.index_to * path)),
                     ..uniform
-                })),
-                ThermalPlace::Entrance => {
-                    leg(Piece::Thin, kick);
-                    leg(Piece::Stretch(whole), whole.map(Stretch::matrix));
-                }
-                ThermalPlace::Middle => {
-                    straight(half);
-                    leg(Piece::Thin, kick);
-                    leg(Piece::Stretch(half), half.map(Stretch::matrix));
-                }
-                ThermalPlace::Exit => {
-                    straight(whole);
-                    leg(Piece::Thin, kick);
-                }
+                }))),
+                ThermalPlace::Entrance => [kick, whole].into_iter().for_each(&mut *leg),
+                ThermalPlace::Middle => [half, kick, half].into_iter().for_each(&mut *leg),
+                ThermalPlace::Exit => [whole, kick].into_iter().for_each(&mut *leg),
             }
         }
     }
     let exit = PerPlane::both(-slab.exit.of(values));
-    leg(
-        Piece::Face(End::Exit),
+    leg(Piece::Face(
+        End::Exit,
         own(crossing.reversed().matrices(exit)),
-    );
+    ));
 }
 
 /// Power of a thermal lens in the file's planes, in 1/m.

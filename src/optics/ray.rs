@@ -62,6 +62,26 @@ impl<T: Real> RayMatrix<T> {
         }
     }
 
+    /// This element followed by a propagation over a reduced length, in metres.
+    #[inline(always)]
+    pub fn propagated(self, reduced_length: T) -> Self {
+        RayMatrix {
+            a: self.a + reduced_length * self.c,
+            b: self.b + reduced_length * self.d,
+            ..self
+        }
+    }
+
+    /// This element followed by a thin one that adds `c`·x to the reduced angle.
+    #[inline(always)]
+    pub fn kicked(self, c: T) -> Self {
+        RayMatrix {
+            c: self.c + c * self.a,
+            d: self.d + c * self.b,
+            ..self
+        }
+    }
+
     /// The same element met from its other side.
     pub fn reversed(self) -> Self {
         RayMatrix {

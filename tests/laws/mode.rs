@@ -58,7 +58,7 @@ impl Case {
         let length = RoundTripLengths::of(&self.cavity, &self.values).geometric;
         let mut product = RayMatrix::identity();
         for leg in self.legs() {
-            product = product.then(leg.matrix[plane]);
+            product = product.then(leg.matrix()[plane]);
             largest = largest.max(size(product, length));
         }
         // A standing cavity is walked twice.
@@ -108,7 +108,7 @@ proptest! {
     fn every_leg_has_determinant_one(spec in any_cavity(MOST_PARTS)) {
         for leg in Case::of(&spec).legs() {
             for plane in Plane::BOTH {
-                let m = leg.matrix[plane];
+                let m = leg.matrix()[plane];
                 let terms = (m.a * m.d).abs() + (m.b * m.c).abs();
                 prop_assert!((m.determinant() - 1.0).abs() <= 8.0 * f64::EPSILON * terms);
             }
@@ -121,7 +121,7 @@ proptest! {
     fn the_mode_repeats_itself_from_every_plane(spec in stable_cavity()) {
         let case = Case::of(&spec);
         let mut legs: Vec<PerPlane<RayMatrix<f64>>> =
-            case.legs().into_iter().map(|leg| leg.matrix).collect();
+            case.legs().into_iter().map(|leg| leg.matrix()).collect();
         if case.cavity.form() == Form::Standing {
             let back: Vec<_> = legs.iter().rev().map(|m| m.map(RayMatrix::reversed)).collect();
             legs.extend(back);

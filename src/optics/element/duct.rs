@@ -23,8 +23,8 @@ pub struct Stretch<T> {
     pub length: T,
     /// Index on the axis.
     pub index: T,
-    /// γ² in 1/m²: positive guides, negative antiguides, zero is a uniform medium.
-    pub strength_squared: T,
+    /// γ² in 1/m²: positive guides, negative antiguides; none in a uniform medium.
+    pub strength_squared: Option<T>,
 }
 
 impl<T: Real> Stretch<T> {
@@ -33,20 +33,32 @@ impl<T: Real> Stretch<T> {
         Stretch {
             length,
             index,
-            strength_squared: T::constant(0.0),
+            strength_squared: None,
         }
     }
 
     /// The ray matrix.
     pub fn matrix(self) -> RayMatrix<T> {
-        let z = self.strength_squared * self.length.squared();
+        let Some(strength_squared) = self.strength_squared else {
+            return RayMatrix::propagation(self.length / self.index);
+        };
+        let z = strength_squared * self.length.squared();
         let cos = z.cos_root();
         let reduced_sine = self.length * z.sinc_root();
         RayMatrix {
             a: cos,
             b: reduced_sine / self.index,
-            c: -self.index * self.strength_squared * reduced_sine,
+            c: -self.index * strength_squared * reduced_sine,
             d: cos,
+        }
+    }
+
+    /// A ray matrix followed by this stretch.
+    #[inline(always)]
+    pub fn after(self, before: RayMatrix<T>) -> RayMatrix<T> {
+        match self.strength_squared {
+            None => before.propagated(self.length / self.index),
+            Some(_) => before.then(self.matrix()),
         }
     }
 
@@ -62,12 +74,15 @@ impl<T: Real> Stretch<T> {
     ///
     /// Through every half period γL = π of the rays the phase gains exactly π.
     pub fn gouy_phase(self, beam: Beam<T>) -> T {
+        let m = self.matrix();
+        let Some(strength_squared) = self.strength_squared else {
+            return beam.gouy_phase(m);
+        };
         let zero = T::constant(0.0);
-        let z = self.strength_squared * self.length.squared();
+        let z = strength_squared * self.length.squared();
         let half_periods = (z.max(zero).sqrt() / PI).floor();
         // The matrix after whole half periods has the sign (−1)^k.
         let odd = half_periods - (half_periods * 0.5).floor() * 2.0;
-        let m = self.matrix();
         let m = RayMatrix {
             a: T::select(zero.less(odd), -m.a, m.a),
             b: T::select(zero.less(odd), -m.b, m.b),
@@ -78,6 +93,9 @@ impl<T: Real> Stretch<T> {
 
     /// The least β (metres) of a beam anywhere between entry and exit, ends included.
     pub fn least_beta(self, entering: Beam<T>) -> T {
+        let Some(strength_squared) = self.strength_squared else {
+            return self.least_beta_with_one_extremum(entering);
+        };
         // β repeats itself every half period γL = π of the rays, so that half of a shorter
         // stretch holds one extremum at the most.
         let half = self.part(0.5);
@@ -85,7 +103,7 @@ impl<T: Real> Stretch<T> {
         let short = half
             .least_beta_with_one_extremum(entering)
             .min(half.least_beta_with_one_extremum(middle));
-        let z = self.strength_squared * self.length.squared();
+        let z = strength_squared * self.length.squared();
         let long = T::constant(PI * PI).less(z);
         T::select(long, self.beta_at_waist(entering), short)
     }
@@ -104,7 +122,10 @@ impl<T: Real> Stretch<T> {
     /// γ + n₀²γ_duct²β is the same at every place; at an extremum α = 0 and γ = 1/β, so that β
     /// is the smaller root of a quadratic.
     fn beta_at_waist(self, beam: Beam<T>) -> T {
-        let strength = self.strength_squared * self.index.squared();
+        let Some(strength_squared) = self.strength_squared else {
+            return beam.gamma.recip();
+        };
+        let strength = strength_squared * self.index.squared();
         let invariant = beam.gamma + strength * beam.beta;
         // Not negative but for rounding: (γ − Kβ)² + 4Kα².
         let square = (invariant.squared() - strength * 4.0).max(T::constant(0.0));
@@ -123,7 +144,7 @@ mod tests {
         Stretch {
             length: 0.12,
             index: 1.7,
-            strength_squared,
+            strength_squared: Some(strength_squared),
         }
     }
 

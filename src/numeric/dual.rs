@@ -179,6 +179,9 @@ impl<T: Real> Real for Dual<T> {
     fn floor(self) -> Self {
         Dual::fixed(self.value.floor())
     }
+    fn round(self) -> Self {
+        Dual::fixed(self.value.round())
+    }
     fn less(self, other: Self) -> Self::Mask {
         self.value.less(other.value)
     }

@@ -1,7 +1,7 @@
 //! The number type over which the physics is written once.
 //!
 //! With `T = f64` the physics is the ordinary analysis, with [`Dual`](super::Dual) it gives exact
-//! derivatives, and with a block of lanes it would evaluate many cavities at a time. Hence the two
+//! derivatives, and with [`Lanes`](super::Lanes) it evaluates eight cavities at a time. Hence the two
 //! rules that the trait imposes: a decision that depends on a value is a [`Real::select`] between
 //! two finite results, never a branch; and functions that are smooth for the physics are called
 //! by their entire form ([`Real::cos_root`], [`Real::sinc_root`]), so that a duct may pass from
@@ -53,32 +53,40 @@ pub trait Real:
     fn sinc_root(self) -> Self;
     /// The largest whole number not above this one; its derivative counts as zero.
     fn floor(self) -> Self;
+    /// The nearest whole number, the even one of two; its derivative counts as zero.
+    fn round(self) -> Self;
     /// Whether `self < other`.
     fn less(self, other: Self) -> Self::Mask;
     /// `yes` where the mask holds, `no` elsewhere.
     fn select(mask: Self::Mask, yes: Self, no: Self) -> Self;
 
     /// The smaller of two numbers.
+    #[inline(always)]
     fn min(self, other: Self) -> Self {
         Self::select(self.less(other), self, other)
     }
     /// The larger of two numbers.
+    #[inline(always)]
     fn max(self, other: Self) -> Self {
         Self::select(self.less(other), other, self)
     }
     /// The square.
+    #[inline(always)]
     fn squared(self) -> Self {
         self * self
     }
     /// The reciprocal.
+    #[inline(always)]
     fn recip(self) -> Self {
         Self::constant(1.0) / self
     }
     /// Sine.
+    #[inline(always)]
     fn sin(self) -> Self {
         self.sin_cos().0
     }
     /// Cosine.
+    #[inline(always)]
     fn cos(self) -> Self {
         self.sin_cos().1
     }
@@ -139,6 +147,9 @@ impl Real for f64 {
     }
     fn floor(self) -> f64 {
         f64::floor(self)
+    }
+    fn round(self) -> f64 {
+        self.round_ties_even()
     }
     fn less(self, other: f64) -> bool {
         self < other

@@ -7,10 +7,10 @@ use super::eigenmode::{Eigenmode, Stability};
 use super::envelope::{AtPart, Envelope};
 use super::leaving;
 use super::lengths::RoundTripLengths;
-use super::measures::Figures;
+use super::measures::{Evaluator, Workspace};
 use super::ranges::{End, QuantityRange, stable_ranges};
 use crate::cavity::{
-    Cavity, Element, Entry, Form, Incidence, Index, Opening, Origin, Part, slab_crossing,
+    Cavity, Element, Entry, Form, Incidence, Index, Measure, Opening, Origin, Part, slab_crossing,
 };
 use crate::optics::beam::Beam;
 use crate::optics::{PerPlane, Plane};
@@ -800,24 +800,33 @@ fn tolerance(entry: &Entry) -> Option<f64> {
     })
 }
 
-fn limits(cavity: &Cavity, values: &[f64]) -> Vec<LimitCheck> {
-    if cavity.limits.is_empty() {
-        return Vec::new();
+fn no_value(measure: Measure) -> &'static str {
+    match measure {
+        Measure::Finesse | Measure::Linewidth => "nothing is written of any loss",
+        Measure::ModeClearance { .. } => "the cavity holds no mode, or no loss is written",
+        _ => "the cavity holds no mode",
     }
-    let figures = Figures::of(cavity, values);
+}
+
+fn limits(cavity: &Cavity, values: &[f64]) -> Vec<LimitCheck> {
+    let measures = cavity.limits.iter().map(|limit| limit.measure).collect();
+    let mut found = Vec::new();
+    Evaluator::new(cavity, measures).evaluate(
+        values,
+        &mut Workspace::default(),
+        |_, value: f64, exists| found.push(exists.then_some(value)),
+    );
     cavity
         .limits
         .iter()
-        .map(|limit| {
-            let value = figures.value(limit.measure);
-            LimitCheck {
-                of: limit.name.clone(),
-                value,
-                holds: value.is_some_and(|value| limit.bounds.hold(value)),
-                wanted: limit.bounds.to_string(),
-                why: value.is_none().then(|| "the cavity holds no mode".into()),
-                limit: limit.clone(),
-            }
+        .zip(found)
+        .map(|(limit, value)| LimitCheck {
+            of: limit.name.clone(),
+            value,
+            holds: value.is_some_and(|value| limit.bounds.hold(value)),
+            wanted: limit.bounds.to_string(),
+            why: value.is_none().then(|| no_value(limit.measure).into()),
+            limit: limit.clone(),
         })
         .collect()
 }

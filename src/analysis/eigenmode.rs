@@ -42,6 +42,7 @@ pub struct PlaneMode<T: Real> {
 
 impl<T: Real> PlaneMode<T> {
     /// The mode that belongs to the matrix of one walk along a cavity of the given form.
+    #[inline(always)]
     pub fn of(form: Form, way: RayMatrix<T>) -> Self {
         match form {
             Form::Ring => Self::of_ring(way),
@@ -49,6 +50,7 @@ impl<T: Real> PlaneMode<T> {
         }
     }
 
+    #[inline(always)]
     fn of_ring(m: RayMatrix<T>) -> Self {
         let half_trace = m.half_trace();
         let (below, above) = (half_trace + 1.0, -half_trace + 1.0);
@@ -65,6 +67,7 @@ impl<T: Real> PlaneMode<T> {
         Self::new(half_trace, margin, stable, sine, positive, beam)
     }
 
+    #[inline(always)]
     fn of_standing(u: RayMatrix<T>) -> Self {
         let (ad, bc) = (u.a * u.d, u.b * u.c);
         let half_trace = ad + bc;
@@ -78,6 +81,7 @@ impl<T: Real> PlaneMode<T> {
         Self::new(half_trace, margin, stable, sine, positive, beam)
     }
 
+    #[inline(always)]
     fn new(
         half_trace: T,
         margin: T,

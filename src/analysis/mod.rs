@@ -1,5 +1,6 @@
 //! What a cavity does: plain data in, plain documented results out.
 
+pub mod airy;
 pub mod check;
 pub mod clipping;
 pub mod eigenmode;
@@ -8,3 +9,4 @@ pub mod leaving;
 pub mod lengths;
 pub mod measures;
 pub mod ranges;
+pub mod spectrum;

@@ -17,6 +17,9 @@ const CLOSES_WITHIN: f64 = 1e-3;
 /// planes' modes by its square, 1e-8, and angles in files are rarely written more exactly.
 const ROLL_WITHIN: f64 = 1e-4;
 
+/// Highest transverse order that counts where nothing is said.
+const DEFAULT_ORDER: usize = 12;
+
 /// The makings of a cavity.
 #[derive(Clone, Debug)]
 pub struct Draft {
@@ -78,6 +81,8 @@ impl Cavity {
         let cavity = Cavity {
             title: None,
             limits: Vec::new(),
+            polarisation: super::Polarisation::S,
+            highest_order: DEFAULT_ORDER,
             form,
             parts,
             book,

@@ -21,6 +21,7 @@ impl Slot {
     }
 
     /// Its value in a list of values.
+    #[inline(always)]
     pub fn of<T: Copy>(self, values: &[T]) -> T {
         values[self.0]
     }

@@ -33,6 +33,15 @@ pub enum Measure {
     RoundTripLength,
     /// Free spectral range, in hertz.
     Fsr,
+    /// π√ρ/(1 − ρ).
+    Finesse,
+    /// Free spectral range over finesse, in hertz.
+    Linewidth,
+    /// Linewidths from the fundamental to the nearest TEM_mn.
+    ModeClearance {
+        /// Highest order m + n that counts.
+        up_to: usize,
+    },
 }
 
 /// What the number of a measure is, to be read and written with its unit.
@@ -60,13 +69,10 @@ pub struct MeasureError {
 }
 
 /// Measures that will be named but cannot be computed yet.
-const LATER: [&str; 9] = [
-    "linewidth",
-    "finesse",
+const LATER: [&str; 6] = [
     "lifetime",
     "buildup",
     "spacing",
-    "mode_clearance",
     "parasitic",
     "suppression",
     "coupling",
@@ -74,7 +80,7 @@ const LATER: [&str; 9] = [
 
 /// Measures of a whole cavity and of a part, for suggestions.
 const KNOWN: &str = "margin, half_trace.tangential, gouy.tangential, round_trip_length, fsr, \
-     distance.M1.M2, or a part's spot, least, waist, waist_at or aspect such as M1.spot";
+     finesse, linewidth, mode_clearance, distance.M1.M2, or a part's spot, least, waist, waist_at or aspect such as M1.spot";
 
 impl Measure {
     /// Reads a measure by its name, such as `margin` or `X1.least.sagittal`.
@@ -125,6 +131,11 @@ impl Measure {
             "gouy" if at_most(2) => Measure::Gouy(needs_plane(plane_of(words.get(1))?)?),
             "round_trip_length" if at_most(1) => Measure::RoundTripLength,
             "fsr" if at_most(1) => Measure::Fsr,
+            "finesse" if at_most(1) => Measure::Finesse,
+            "linewidth" if at_most(1) => Measure::Linewidth,
+            "mode_clearance" if at_most(1) => Measure::ModeClearance {
+                up_to: cavity.highest_order,
+            },
             "distance" if words.len() == 3 => {
                 Measure::Distance(part_named(words[1])?, part_named(words[2])?)
             }
@@ -192,10 +203,14 @@ impl Measure {
     /// What its number is.
     pub fn presence(self) -> Presence {
         match self {
-            Measure::Margin(_) | Measure::HalfTrace(_) | Measure::Aspect(_) => Presence::Number,
+            Measure::Margin(_)
+            | Measure::HalfTrace(_)
+            | Measure::Aspect(_)
+            | Measure::Finesse
+            | Measure::ModeClearance { .. } => Presence::Number,
             Measure::Gouy(_) => Presence::Angle,
             Measure::WaistAt(..) => Presence::Position,
-            Measure::Fsr => Presence::Frequency,
+            Measure::Fsr | Measure::Linewidth => Presence::Frequency,
             Measure::Spot(..)
             | Measure::Least(..)
             | Measure::Waist(..)

@@ -14,8 +14,8 @@ pub use assemble::{Draft, Fault};
 pub use book::{Book, Entry, Origin, Slot, Tie};
 pub use measure::{Bounds, Limit, Measure, MeasureError, Presence};
 pub use part::{
-    Coating, Element, Incidence, Index, Mirror, Opening, Part, Side, Slab, Substrate, ThermalLens,
-    ThermalPlace,
+    Coating, Element, Incidence, Index, Mirror, Opening, Part, Polarisation, Side, Slab, SlabLoss,
+    Substrate, ThermalLens, ThermalPlace,
 };
 pub(crate) use walk::slab_crossing;
 pub use walk::{End, Leg, Piece};
@@ -49,6 +49,10 @@ pub struct Cavity {
     pub title: Option<String>,
     /// What must hold for the build to be good.
     pub limits: Vec<Limit>,
+    /// How the light is polarised.
+    pub polarisation: Polarisation,
+    /// Highest order of the transverse modes that count.
+    pub highest_order: usize,
     form: Form,
     parts: Vec<Part>,
     book: Book,

@@ -70,6 +70,7 @@ impl Index {
     };
 
     /// The phase index.
+    #[inline(always)]
     pub fn phase<T: Real>(self, values: &[T]) -> T {
         match self {
             Index::Fixed { phase, .. } => T::constant(phase),
@@ -81,6 +82,7 @@ impl Index {
     }
 
     /// The group index, or the phase index where it is not known.
+    #[inline(always)]
     pub fn group<T: Real>(self, values: &[T]) -> T {
         match self {
             Index::Fixed {
@@ -138,6 +140,17 @@ impl Coating {
         *self == Coating::default()
     }
 
+    /// Power reflectance; all of it where nothing is written about the coating.
+    ///
+    /// Loss alone, or with it the transmission, leaves the rest.
+    pub fn reflectance<T: Real>(&self, values: &[T]) -> T {
+        let share = |slot: Option<Slot>| slot.map_or(T::constant(0.0), |slot| slot.of(values));
+        match self.reflectance {
+            Some(slot) => slot.of(values),
+            None => (-(share(self.transmission) + share(self.loss)) + 1.0).max(T::constant(0.0)),
+        }
+    }
+
     /// Power transmission; `None` where nothing is written about the coating.
     ///
     /// Two of the three name the third; reflectance or transmission alone leaves no loss; loss
@@ -189,6 +202,15 @@ pub struct ThermalLens {
     pub place: ThermalPlace,
 }
 
+/// Across which of its planes the light is polarised.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Polarisation {
+    /// Across the file's tangential plane.
+    S,
+    /// Along it.
+    P,
+}
+
 /// A mirror.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Mirror {
@@ -204,6 +226,15 @@ pub struct Mirror {
     pub coating_p: Coating,
     /// The body behind it.
     pub substrate: Option<Substrate>,
+}
+
+/// How a slab's loss is written.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum SlabLoss {
+    /// A share of the power in each pass.
+    PerPass(Slot),
+    /// An attenuation α in 1/m: 1 − exp(−αℓ) is lost along the path ℓ inside.
+    PerLength(Slot),
 }
 
 /// A plate, rod or crystal with two faces.
@@ -223,6 +254,8 @@ pub struct Slab {
     pub exit: Slot,
     /// Its thermal lens.
     pub thermal: Option<ThermalLens>,
+    /// Power lost in one pass.
+    pub loss: Option<SlabLoss>,
 }
 
 /// What a part does to the beam.
@@ -241,6 +274,8 @@ pub enum Element {
     Lens {
         /// Dioptric power 1/f in the file's planes, in 1/m.
         power: PerPlane<Slot>,
+        /// Power lost in one pass.
+        loss: Option<Slot>,
     },
     /// A slab.
     Slab(Slab),
@@ -314,7 +349,74 @@ pub struct Part {
     pub clear: f64,
 }
 
+impl Mirror {
+    /// The coating as the light meets it: a mirror that folds in the other plane meets light
+    /// polarised across the file's tangential plane along its own.
+    pub fn coating(&self, swapped: bool, polarisation: Polarisation) -> &Coating {
+        if (polarisation == Polarisation::P) != swapped {
+            &self.coating_p
+        } else {
+            &self.coating_s
+        }
+    }
+}
+
+impl Index {
+    fn slots(self) -> [Option<Slot>; 2] {
+        match self {
+            Index::Fixed { .. } => [None; 2],
+            Index::Slots { phase, group } => [Some(phase), group],
+            Index::Material { temperature, .. } => [Some(Cavity::WAVELENGTH), Some(temperature)],
+        }
+    }
+}
+
 impl Part {
+    /// The slots on which the part's ray matrices depend.
+    pub fn ray_slots(&self) -> Vec<Slot> {
+        let pair = |pair: PerPlane<Slot>| [Some(pair.tangential), Some(pair.sagittal)];
+        let mut slots: Vec<Option<Slot>> = self.before.slots().into();
+        slots.extend(self.after.slots());
+        match &self.element {
+            Element::Mirror(mirror) => {
+                slots.push(Some(mirror.incidence));
+                slots.extend(pair(mirror.curvature));
+            }
+            Element::Gap { length, medium } => {
+                slots.push(Some(*length));
+                slots.extend(medium.slots());
+            }
+            Element::Lens { power, .. } => slots.extend(pair(*power)),
+            Element::Slab(slab) => {
+                slots.extend([slab.thickness, slab.entrance, slab.exit].map(Some));
+                slots.extend(slab.index.slots());
+                if let Incidence::Angle(slot) = slab.incidence {
+                    slots.push(Some(slot));
+                }
+                if let Some(lens) = &slab.thermal {
+                    slots.extend(lens.power.into_iter().flat_map(pair));
+                    if let Some(per_watt) = lens.power_per_watt {
+                        slots.extend(pair(per_watt));
+                        slots.push(Some(Cavity::PUMP));
+                    }
+                }
+            }
+            Element::Duct {
+                length,
+                index,
+                strength,
+                ..
+            } => {
+                slots.push(Some(*length));
+                slots.extend(index.slots());
+                slots.extend(pair(*strength));
+            }
+            Element::Aperture => {}
+            Element::Matrix { length, .. } => slots.push(Some(*length)),
+        }
+        slots.into_iter().flatten().collect()
+    }
+
     /// The part's kind, as files name it.
     pub fn kind(&self) -> &'static str {
         match self.element {

@@ -50,6 +50,7 @@ pub struct Leg<T> {
 
 impl<T: Real> Leg<T> {
     /// Length along the beam, in metres; zero for what is thin.
+    #[inline(always)]
     pub fn length(&self) -> T {
         match &self.piece {
             Piece::Stretch(s) => s.tangential.length,
@@ -58,6 +59,7 @@ impl<T: Real> Leg<T> {
     }
 
     /// Its ray matrices.
+    #[inline(always)]
     pub fn matrix(&self) -> PerPlane<RayMatrix<T>> {
         self.after(PerPlane::both(RayMatrix::identity()))
     }
@@ -77,17 +79,34 @@ impl<T: Real> Leg<T> {
 impl Cavity {
     /// Walks the path once, one way, with the given values in the address book's slots.
     pub fn walk<T: Real>(&self, values: &[T], mut visit: impl FnMut(Leg<T>)) {
-        let last = self.parts.len() - 1;
-        if self.is_ring() {
-            for part in (1..=last).chain([0]) {
-                self.walk_part(part, 1.0, values, &mut visit);
-            }
-        } else {
-            for part in 0..=last {
-                let share = if part == 0 || part == last { 0.5 } else { 1.0 };
-                self.walk_part(part, share, values, &mut visit);
-            }
+        for (part, share) in self.walk_order() {
+            self.walk_part(part, share, values, &mut visit);
         }
+    }
+
+    /// The parts in the order of the walk, with the share of each that counts.
+    pub(crate) fn walk_order(&self) -> impl Iterator<Item = (usize, f64)> + use<> {
+        let count = self.parts.len();
+        let ring = self.is_ring();
+        (0..count).map(move |step| {
+            let is_end = step == 0 || step + 1 == count;
+            match ring {
+                true => ((step + 1) % count, 1.0),
+                false => (step, if is_end { 0.5 } else { 1.0 }),
+            }
+        })
+    }
+
+    /// Geometric way from the first part to another one's start, in metres.
+    pub(crate) fn way_to<T: Real>(&self, part: usize, values: &[T]) -> T {
+        let mut sum = T::constant(0.0);
+        for index in 0..part {
+            if let Element::Matrix { length, .. } = self.parts[index].element {
+                sum = sum + length.of(values);
+            }
+            self.walk_part(index, 1.0, values, &mut |leg| sum = sum + leg.length());
+        }
+        sum
     }
 
     /// The half reflection with which the walk of a standing cavity starts.
@@ -105,7 +124,8 @@ impl Cavity {
     }
 
     /// The legs of one part; `share` is the part of a mirror's power that counts.
-    fn walk_part<T: Real>(
+    #[inline(always)]
+    pub(crate) fn walk_part<T: Real>(
         &self,
         index: usize,
         share: f64,
@@ -123,7 +143,7 @@ impl Cavity {
                 let stretch = Stretch::uniform(length.of(values), medium.phase(values));
                 leg(Piece::Stretch(PerPlane::both(stretch)));
             }
-            Element::Lens { power } => {
+            Element::Lens { power, .. } => {
                 leg(Piece::Kick(power.map(|slot| -slot.of(values))));
             }
             Element::Slab(slab) => walk_slab(
@@ -162,6 +182,7 @@ impl Cavity {
 }
 
 /// Dioptric power of a mirror in the file's planes.
+#[inline(always)]
 fn mirror_power<T: Real>(mirror: &Mirror, swapped: bool, index: T, values: &[T]) -> PerPlane<T> {
     let own = |pair: PerPlane<T>| if swapped { pair.swapped() } else { pair };
     let curvature = own(mirror.curvature.map(|slot| slot.of(values)));
@@ -173,6 +194,7 @@ fn mirror_power<T: Real>(mirror: &Mirror, swapped: bool, index: T, values: &[T])
 }
 
 /// How the beam crosses a slab's entrance face, from a medium of index `outside`.
+#[inline(always)]
 pub(crate) fn slab_crossing<T: Real>(slab: &Slab, outside: T, values: &[T]) -> Crossing<T> {
     let inside = slab.index.phase(values);
     match slab.incidence {
@@ -181,6 +203,7 @@ pub(crate) fn slab_crossing<T: Real>(slab: &Slab, outside: T, values: &[T]) -> C
     }
 }
 
+#[inline(always)]
 fn walk_slab<T: Real>(
     slab: &Slab,
     swapped: bool,
@@ -223,6 +246,7 @@ fn walk_slab<T: Real>(
 }
 
 /// Power of a thermal lens in the file's planes, in 1/m.
+#[inline(always)]
 fn thermal_power<T: Real>(lens: &ThermalLens, values: &[T]) -> PerPlane<T> {
     let zero = PerPlane::both(T::constant(0.0));
     let fixed = lens

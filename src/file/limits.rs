@@ -45,19 +45,27 @@ pub(super) fn read_limit<'t>(
         }
         return None;
     };
-    let measure = match Measure::parse(&name, cavity) {
+    let mut measure = match Measure::parse(&name, cavity) {
         Ok(measure) => measure,
         Err(error) => {
             context.report(Some(place), error.message, &error.help);
             return None;
         }
     };
-    if fields.has("up_to") {
-        context.report(
-            Some(fields.place_of("up_to")),
-            "`up_to` belongs to mode_clearance only",
-            "leave it out",
-        );
+    if let Some(found) = fields.find("up_to") {
+        match (&mut measure, read_order(&found.raw)) {
+            (Measure::ModeClearance { up_to }, Some(order)) => *up_to = order,
+            (Measure::ModeClearance { .. }, None) => context.report(
+                Some(found.place),
+                "`up_to` must be a whole number from 1 to 100",
+                "it is the highest order m + n that counts, such as up_to = 6",
+            ),
+            _ => context.report(
+                Some(found.place),
+                "`up_to` belongs to mode_clearance only",
+                "leave it out",
+            ),
+        }
     }
     let kind = match measure.presence() {
         Presence::Number => Kind::Number,
@@ -72,6 +80,14 @@ pub(super) fn read_limit<'t>(
         measure,
         bounds,
     })
+}
+
+/// A whole number of a transverse order.
+pub(super) fn read_order(raw: &Raw<'_>) -> Option<usize> {
+    match raw {
+        Raw::Number(n) if n.fract() == 0.0 && (1.0..=100.0).contains(n) => Some(*n as usize),
+        _ => None,
+    }
 }
 
 fn read_bounds(fields: &Fields<'_, '_>, kind: Kind) -> Option<Bounds> {

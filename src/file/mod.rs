@@ -19,7 +19,7 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Slot};
+use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Polarisation, Slot};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
 use crate::quantity::{self, Kind, QuantityError, Spread};
 use context::{Context, Override, in_order, nearest};
@@ -241,6 +241,13 @@ fn read_file<'t>(
             .collect::<Vec<_>>()
     })?;
     plain::check_input(&fields, &cavity);
+    if fields.word("polarisation", &["s", "p"]) == Some(1) {
+        cavity.polarisation = Polarisation::P;
+    }
+    let order = fields
+        .find("highest_order")
+        .and_then(|found| limits::read_order(&found.raw));
+    cavity.highest_order = order.unwrap_or(cavity.highest_order);
     cavity.title = fields.text("title").map(|(text, _)| text);
     let limits = fields.list("limits", "limits = [ { of = \"margin\", above = 0.1 } ]");
     cavity.limits = limits

@@ -221,17 +221,15 @@ pub(super) fn read_part<'t>(
             length: required(&fields, "length", Kind::Length, "a gap")?,
             medium: read_medium(&fields, "medium", ambient),
         },
-        "lens" => {
-            fields.slot("loss", Kind::Ratio);
-            Element::Lens {
-                power: read_pair(
-                    &fields,
-                    ["focal", "focal_tangential", "focal_sagittal"],
-                    Kind::Focal,
-                    "a lens",
-                )?,
-            }
-        }
+        "lens" => Element::Lens {
+            loss: fields.slot("loss", Kind::Ratio),
+            power: read_pair(
+                &fields,
+                ["focal", "focal_tangential", "focal_sagittal"],
+                Kind::Focal,
+                "a lens",
+            )?,
+        },
         "slab" => read_slab(&fields)?,
         "duct" => read_duct(&fields)?,
         "aperture" => Element::Aperture,

@@ -3,8 +3,9 @@
 
 use toml::de::{DeTable, DeValue};
 
-use super::context::{Context, Raw, in_order};
+use super::context::{Context, in_order};
 use super::fields::Fields;
+use super::limits::read_order;
 use super::parts::read_part;
 use crate::cavity::{Cavity, Index};
 use crate::quantity::Kind;
@@ -38,16 +39,14 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
     fields.text("title");
     fields.text("notes");
     fields.word("polarisation", &["s", "p"]);
-    if let Some(found) = fields.find("highest_order") {
-        let good =
-            matches!(found.raw, Raw::Number(n) if n.fract() == 0.0 && (1.0..=100.0).contains(&n));
-        if !good {
-            context.report(
-                Some(found.place),
-                "`highest_order` must be a whole number from 1 to 100",
-                "write it like highest_order = 12",
-            );
-        }
+    if let Some(found) = fields.find("highest_order")
+        && read_order(&found.raw).is_none()
+    {
+        context.report(
+            Some(found.place),
+            "`highest_order` must be a whole number from 1 to 100",
+            "write it like highest_order = 12",
+        );
     }
     if let Some(frequencies) = fields.list("sidebands", "write it like sidebands = [\"12 MHz\"]") {
         for frequency in frequencies {

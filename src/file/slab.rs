@@ -4,7 +4,7 @@ use super::fields::Fields;
 use super::medium::read_slab_medium;
 use super::mirror::read_side;
 use super::parts::{read_pair, required};
-use crate::cavity::{Element, Incidence, Side, Slab, ThermalLens, ThermalPlace};
+use crate::cavity::{Element, Incidence, Side, Slab, SlabLoss, ThermalLens, ThermalPlace};
 use crate::quantity::{Kind, Value};
 
 pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
@@ -19,9 +19,7 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
     let entrance = fields.slot_or("entrance", Kind::Face, 0.0);
     let exit = fields.slot_or("exit", Kind::Face, 0.0);
     let thermal = read_thermal(fields);
-    if fields.has("loss") {
-        fields.quantity("loss", Kind::Loss);
-    }
+    let loss = read_loss(fields);
     fields.slot("conversion", Kind::PerWatt);
     if let (Some(slot), Some(found)) = (thickness, fields.find("thickness"))
         && slot.of(&fields.context.book.borrow().nominal()) <= 0.0
@@ -41,7 +39,18 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
         entrance,
         exit,
         thermal,
+        loss,
     }))
+}
+
+fn read_loss(fields: &Fields<'_, '_>) -> Option<SlabLoss> {
+    let found = fields.find("loss")?;
+    let quantity = fields.context.quantity("loss", &found, Kind::Loss)?;
+    let slot = fields.slot("loss", Kind::Loss)?;
+    Some(match quantity.value {
+        Value::PerLength(_) => SlabLoss::PerLength(slot),
+        _ => SlabLoss::PerPass(slot),
+    })
 }
 
 fn read_incidence(fields: &Fields<'_, '_>) -> Incidence {

@@ -203,7 +203,7 @@ mod tests {
     #[test]
     fn angles_are_those_of_the_library() {
         for step in 0..4000 {
-            let angle = f64::from(step) * 0.0017 - 3.14;
+            let angle = f64::from(step) * 0.0017 - 3.1;
             let radius = f64::from(step % 7 + 1);
             let (y, x) = (radius * angle.sin(), radius * angle.cos());
             let found = Lanes::constant(y).atan2(Lanes::constant(x)).0[3];

@@ -35,6 +35,7 @@ pub struct Beam<T> {
 
 impl<T: Real> Beam<T> {
     /// The beam with the given β (metres) and α.
+    #[inline(always)]
     pub fn new(beta: T, alpha: T) -> Self {
         Beam {
             beta,
@@ -46,6 +47,7 @@ impl<T: Real> Beam<T> {
     /// The beam behind an element.
     ///
     /// Written as sums of squares, so that a tight focus costs no digits.
+    #[inline(always)]
     pub fn after(self, m: RayMatrix<T>) -> Self {
         let height = m.a * self.beta - m.b * self.alpha;
         let angle = m.c * self.beta - m.d * self.alpha;
@@ -57,6 +59,7 @@ impl<T: Real> Beam<T> {
     }
 
     /// The same beam travelling the other way.
+    #[inline(always)]
     pub fn reversed(self) -> Self {
         Beam {
             alpha: -self.alpha,
@@ -70,6 +73,7 @@ impl<T: Real> Beam<T> {
     }
 
     /// Beam radius w (1/e² of the intensity), in metres.
+    #[inline(always)]
     pub fn radius(self, wavelength: T) -> T {
         (wavelength * self.beta / PI).sqrt()
     }
@@ -80,12 +84,14 @@ impl<T: Real> Beam<T> {
     }
 
     /// Radius of the waist, here or elsewhere, in metres.
+    #[inline(always)]
     pub fn waist_radius(self, wavelength: T) -> T {
         (wavelength / (self.gamma * PI)).sqrt()
     }
 
     /// Distance from here to the waist in a medium of the given index, in metres, downstream
     /// positive.
+    #[inline(always)]
     pub fn distance_to_waist(self, index: T) -> T {
         index * self.alpha / self.gamma
     }

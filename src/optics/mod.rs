@@ -50,6 +50,7 @@ pub struct PerPlane<X> {
 
 impl<X> PerPlane<X> {
     /// A value computed for each plane.
+    #[inline(always)]
     pub fn from_fn(mut f: impl FnMut(Plane) -> X) -> Self {
         PerPlane {
             tangential: f(Plane::Tangential),
@@ -58,6 +59,7 @@ impl<X> PerPlane<X> {
     }
 
     /// The same function of each plane's value.
+    #[inline(always)]
     pub fn map<Y>(self, mut f: impl FnMut(X) -> Y) -> PerPlane<Y> {
         PerPlane {
             tangential: f(self.tangential),
@@ -66,6 +68,7 @@ impl<X> PerPlane<X> {
     }
 
     /// A function of the values that two pairs have in each plane.
+    #[inline(always)]
     pub fn zip<Y, Z>(self, other: PerPlane<Y>, mut f: impl FnMut(X, Y) -> Z) -> PerPlane<Z> {
         PerPlane {
             tangential: f(self.tangential, other.tangential),
@@ -74,6 +77,7 @@ impl<X> PerPlane<X> {
     }
 
     /// The two values exchanged.
+    #[inline(always)]
     pub fn swapped(self) -> Self {
         PerPlane {
             tangential: self.sagittal,
@@ -84,6 +88,7 @@ impl<X> PerPlane<X> {
 
 impl<X: Clone> PerPlane<X> {
     /// The same value in both planes.
+    #[inline(always)]
     pub fn both(value: X) -> Self {
         PerPlane {
             tangential: value.clone(),
@@ -94,6 +99,7 @@ impl<X: Clone> PerPlane<X> {
 
 impl<X> std::ops::Index<Plane> for PerPlane<X> {
     type Output = X;
+    #[inline(always)]
     fn index(&self, plane: Plane) -> &X {
         match plane {
             Plane::Tangential => &self.tangential,
@@ -103,6 +109,7 @@ impl<X> std::ops::Index<Plane> for PerPlane<X> {
 }
 
 impl<X> std::ops::IndexMut<Plane> for PerPlane<X> {
+    #[inline(always)]
     fn index_mut(&mut self, plane: Plane) -> &mut X {
         match plane {
             Plane::Tangential => &mut self.tangential,

@@ -28,11 +28,13 @@ pub struct RayMatrix<T> {
 
 impl<T: Real> RayMatrix<T> {
     /// The element that changes nothing.
+    #[inline(always)]
     pub fn identity() -> Self {
         Self::kick(T::constant(0.0))
     }
 
     /// Propagation over a reduced length L/n, in metres.
+    #[inline(always)]
     pub fn propagation(reduced_length: T) -> Self {
         RayMatrix {
             a: T::constant(1.0),
@@ -43,6 +45,7 @@ impl<T: Real> RayMatrix<T> {
     }
 
     /// A thin element that adds `c`·x to the reduced angle (`c` in 1/m, negative where it focuses).
+    #[inline(always)]
     pub fn kick(c: T) -> Self {
         RayMatrix {
             a: T::constant(1.0),
@@ -53,12 +56,32 @@ impl<T: Real> RayMatrix<T> {
     }
 
     /// This element followed by `next`.
+    #[inline(always)]
     pub fn then(self, next: Self) -> Self {
         RayMatrix {
             a: next.a * self.a + next.b * self.c,
             b: next.a * self.b + next.b * self.d,
             c: next.c * self.a + next.d * self.c,
             d: next.c * self.b + next.d * self.d,
+        }
+    }
+
+    /// This element followed by one that does not vary.
+    #[inline(always)]
+    pub fn then_fixed(self, next: RayMatrix<f64>) -> Self {
+        if next.a == 1.0 && next.d == 1.0 {
+            if next.b == 0.0 && next.c == 0.0 {
+                return self;
+            }
+            if next.c == 0.0 {
+                return self.propagated(T::constant(next.b));
+            }
+        }
+        RayMatrix {
+            a: self.a * next.a + self.c * next.b,
+            b: self.b * next.a + self.d * next.b,
+            c: self.a * next.c + self.c * next.d,
+            d: self.b * next.c + self.d * next.d,
         }
     }
 
@@ -83,6 +106,7 @@ impl<T: Real> RayMatrix<T> {
     }
 
     /// The same element met from its other side.
+    #[inline(always)]
     pub fn reversed(self) -> Self {
         RayMatrix {
             a: self.d,
@@ -92,6 +116,7 @@ impl<T: Real> RayMatrix<T> {
     }
 
     /// The element that undoes this one.
+    #[inline(always)]
     pub fn inverse(self) -> Self {
         RayMatrix {
             a: self.d,
@@ -112,11 +137,13 @@ impl<T: Real> RayMatrix<T> {
     }
 
     /// The determinant, 1 for every element.
+    #[inline(always)]
     pub fn determinant(self) -> T {
         self.a * self.d - self.b * self.c
     }
 
     /// Half the trace, (A + D)/2.
+    #[inline(always)]
     pub fn half_trace(self) -> T {
         (self.a + self.d) * 0.5
     }

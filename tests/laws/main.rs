@@ -1,6 +1,7 @@
 //! Laws that need no reference: properties over random cavities, and second roads to the same
 //! numbers.
 
+mod lanes;
 mod mode;
 mod ranges;
 mod second_road;

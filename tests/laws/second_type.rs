@@ -1,7 +1,7 @@
 //! The physics is written once, over a number type: with a dual number it gives the same values as
 //! with f64, and derivatives that agree with differences.
 
-use modewright::analysis::measures::Figures;
+use modewright::analysis::measures::{Evaluator, Workspace, nominal};
 use modewright::cavity::{Cavity, Measure};
 use modewright::numeric::Dual;
 use proptest::prelude::*;
@@ -45,8 +45,7 @@ proptest! {
     fn dual_numbers_agree_with_plain_ones(
         spec in any_cavity(10).prop_filter("stable", |spec| {
             let cavity = spec.cavity();
-            let values = cavity.book().nominal();
-            Figures::of(&cavity, &values).value(Measure::Margin(None)).unwrap() > 0.05
+                        nominal(&cavity, Measure::Margin(None)).unwrap() > 0.05
         }),
         which in any::<prop::sample::Index>(),
     ) {
@@ -63,22 +62,31 @@ proptest! {
         let slot = movable[which.index(movable.len())];
         let mut duals: Vec<Dual<f64>> = nominal.iter().map(|&v| Dual::fixed(v)).collect();
         duals[slot.index()] = Dual::variable(nominal[slot.index()]);
-        let dual = Figures::of(&cavity, &duals);
-        let plain = Figures::of(&cavity, &nominal);
+        let evaluator = Evaluator::new(&cavity, measures(&cavity));
+        let at = |values: &[f64]| {
+            let mut found = Vec::new();
+            evaluator.evaluate(values, &mut Workspace::default(), |_, value: f64, exists| {
+                found.push(exists.then_some(value));
+            });
+            found
+        };
+        let mut with_slopes = Vec::new();
+        evaluator.evaluate(&duals, &mut Workspace::default(), |_, value, exists| {
+            with_slopes.push((value, exists));
+        });
         let step = STEP * slot.of(&nominal).abs();
         let moved = |by: f64| {
             let mut values = nominal.clone();
             values[slot.index()] += by;
-            values
+            at(&values)
         };
-        let (low, high) = (moved(-step), moved(step));
-        let (low, high) = (Figures::of(&cavity, &low), Figures::of(&cavity, &high));
-        for measure in measures(&cavity) {
-            let value = plain.value(measure).unwrap();
-            let (with_slope, exists) = dual.measure(measure);
+        let (plain, low, high) = (at(&nominal), moved(-step), moved(step));
+        for (index, measure) in evaluator.measures().iter().enumerate() {
+            let value = plain[index].unwrap();
+            let (with_slope, exists) = with_slopes[index];
             prop_assert!(exists);
             prop_assert_eq!(with_slope.value, value);
-            let (Some(low), Some(high)) = (low.value(measure), high.value(measure)) else {
+            let (Some(low), Some(high)) = (low[index], high[index]) else {
                 continue;
             };
             // A measure that is the lesser of two has a kink; a difference across it is no slope.

@@ -29,6 +29,7 @@ pub struct Stretch<T> {
 
 impl<T: Real> Stretch<T> {
     /// A uniform medium.
+    #[inline(always)]
     pub fn uniform(length: T, index: T) -> Self {
         Stretch {
             length,
@@ -38,6 +39,7 @@ impl<T: Real> Stretch<T> {
     }
 
     /// The ray matrix.
+    #[inline(always)]
     pub fn matrix(self) -> RayMatrix<T> {
         let Some(strength_squared) = self.strength_squared else {
             return RayMatrix::propagation(self.length / self.index);
@@ -63,6 +65,7 @@ impl<T: Real> Stretch<T> {
     }
 
     /// The first `share` of the stretch, a number from 0 to 1.
+    #[inline(always)]
     pub fn part(self, share: f64) -> Self {
         Stretch {
             length: self.length * share,
@@ -92,6 +95,7 @@ impl<T: Real> Stretch<T> {
     }
 
     /// The least β (metres) of a beam anywhere between entry and exit, ends included.
+    #[inline(always)]
     pub fn least_beta(self, entering: Beam<T>) -> T {
         let Some(strength_squared) = self.strength_squared else {
             return self.least_beta_with_one_extremum(entering);
@@ -108,6 +112,7 @@ impl<T: Real> Stretch<T> {
         T::select(long, self.beta_at_waist(entering), short)
     }
 
+    #[inline(always)]
     fn least_beta_with_one_extremum(self, entering: Beam<T>) -> T {
         let zero = T::constant(0.0);
         let leaving = entering.after(self.matrix());
@@ -121,6 +126,7 @@ impl<T: Real> Stretch<T> {
     ///
     /// γ + n₀²γ_duct²β is the same at every place; at an extremum α = 0 and γ = 1/β, so that β
     /// is the smaller root of a quadratic.
+    #[inline(always)]
     fn beta_at_waist(self, beam: Beam<T>) -> T {
         let Some(strength_squared) = self.strength_squared else {
             return beam.gamma.recip();

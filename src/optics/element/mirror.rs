@@ -11,6 +11,7 @@ use crate::optics::PerPlane;
 /// Dioptric powers −C of a mirror in its own planes, in 1/m.
 ///
 /// `curvature` is 1/R in either plane, concave positive; `cos_incidence` is cos θ.
+#[inline(always)]
 pub fn power<T: Real>(curvature: PerPlane<T>, cos_incidence: T, index: T) -> PerPlane<T> {
     PerPlane {
         tangential: curvature.tangential * index * 2.0 / cos_incidence,

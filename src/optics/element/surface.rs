@@ -31,6 +31,7 @@ impl<T: Real> Crossing<T> {
     /// The crossing at a given angle of incidence (radians), refracted by Snell's law.
     ///
     /// The caller has made sure that the ray is not totally reflected.
+    #[inline(always)]
     pub fn at_incidence(index_from: T, index_to: T, incidence: T) -> Self {
         let (sin_from, cos_from) = incidence.sin_cos();
         let sin_to = sin_from * index_from / index_to;
@@ -43,6 +44,7 @@ impl<T: Real> Crossing<T> {
     }
 
     /// The crossing at Brewster's angle, tan θ₁ = n₂/n₁.
+    #[inline(always)]
     pub fn at_brewster(index_from: T, index_to: T) -> Self {
         let hypotenuse = (index_from.squared() + index_to.squared()).sqrt();
         Crossing {
@@ -54,6 +56,7 @@ impl<T: Real> Crossing<T> {
     }
 
     /// The way back through the same surface.
+    #[inline(always)]
     pub fn reversed(self) -> Self {
         Crossing {
             index_from: self.index_to,
@@ -65,6 +68,7 @@ impl<T: Real> Crossing<T> {
 
     /// Ray matrices of the surface in its own planes; `curvature` is 1/R in either plane, positive
     /// where the centre is on the far side.
+    #[inline(always)]
     pub fn matrices(self, curvature: PerPlane<T>) -> PerPlane<RayMatrix<T>> {
         let zero = T::constant(0.0);
         let one = T::constant(1.0);

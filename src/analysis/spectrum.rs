@@ -1,0 +1,72 @@
+//! Where the transverse modes resonate.
+//!
+//! TEM_mn lies above TEM_00 by FSR·[(mψ_t + nψ_s)/2π + (mF_t + nF_s)/2], folded into half a free
+//! spectral range to either side; ψ is the Gouy phase of a round trip and F the number of flips of
+//! an axis (Kogelnik & Li, Appl. Opt. 5, 1550 (1966), with the flips of a ring's frame).
+
+use std::f64::consts::TAU;
+
+use super::eigenmode::PlaneMode;
+use crate::cavity::Cavity;
+use crate::numeric::Real;
+use crate::optics::{PerPlane, Plane};
+
+/// Spacing of neighbouring orders in either plane, in free spectral ranges, flips counted.
+pub fn spacings<T: Real>(cavity: &Cavity, modes: &PerPlane<PlaneMode<T>>) -> PerPlane<T> {
+    PerPlane::from_fn(|plane: Plane| {
+        let odd = cavity.flips()[plane] % 2 == 1;
+        let flip = if odd { 0.5 } else { 0.0 };
+        modes[plane].gouy_phase / TAU + flip
+    })
+}
+
+/// The least |offset| from the fundamental of any TEM_mn with 1 ≤ m + n ≤ `highest`, in free
+/// spectral ranges, from the spacings of [`spacings`].
+#[inline(always)]
+pub fn least_offset<T: Real>(spacing: PerPlane<T>, highest: usize) -> T {
+    let folded = |x: T| x - x.round();
+    let spacing = spacing.map(folded);
+    let mut least = T::constant(1.0);
+    let mut first = T::constant(0.0);
+    for m in 0..=highest {
+        let mut offset = first;
+        for n in 0..=highest - m {
+            if m + n > 0 {
+                least = least.min(folded(offset).abs());
+            }
+            offset = offset + spacing.sagittal;
+        }
+        first = first + spacing.tangential;
+    }
+    least
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use approx::assert_abs_diff_eq;
+
+    /// Offsets of orders 1 to 22 of a 38.55 m cavity with a 57.1 m mirror, in MHz: laboratory log of
+    /// the Caltech 40 m interferometer, entry 469 (after Siegman, *Lasers*, eq. 19.23). Published
+    /// to four decimals.
+    #[test]
+    fn offsets_of_a_long_cavity() {
+        const ORDERS: [f64; 22] = [
+            1.1936, 2.3871, 3.5807, 0.8859, 2.0795, 3.273, 0.5782, 1.7718, 2.9654, 0.2706, 1.4641,
+            2.6577, 3.8512, 1.1564, 2.35, 3.5436, 0.8488, 2.0423, 3.2359, 0.5411, 1.7347, 2.9282,
+        ];
+        let (length, r1, r2) = (38.55, 1e6, 57.1);
+        let product: f64 = (1.0 - length / r1) * (1.0 - length / r2);
+        let spacing = product.sqrt().acos() / std::f64::consts::PI;
+        let fsr = 299.792458 / (2.0 * length);
+        let mut nearest = f64::INFINITY;
+        for (index, listed) in ORDERS.iter().enumerate() {
+            let turns = spacing * (index + 1) as f64;
+            let offset = (turns - turns.floor()) * fsr;
+            assert_abs_diff_eq!(offset, *listed, epsilon = 6e-5);
+            nearest = nearest.min(listed.min(fsr - listed));
+            let least = least_offset(PerPlane::both(spacing), index + 1) * fsr;
+            assert_abs_diff_eq!(least, nearest, epsilon = 6e-5);
+        }
+    }
+}

@@ -314,7 +314,7 @@ impl<'a> Probe<'a> {
             self.lowest
         };
         let mut near = self.nominal;
-        let mut near_end = End::Open;
+        let mut near_end = self.edge_at_nominal(direction);
         let mut width = self.scale * 0.03;
         let mut start = self.nominal;
         while (limit - start) * direction > 0.0 && self.evaluations < BUDGET {
@@ -328,6 +328,9 @@ impl<'a> Probe<'a> {
             for (index, event) in events.iter().enumerate() {
                 let beyond = events.get(index + 1).map_or(next, |e| e.at);
                 if self.is_stable_between(near, event.at) {
+                    if vanishes && event.at == limit {
+                        return Some((near_end, End::Zero { at: limit }));
+                    }
                     let touch = self.is_stable_between(event.at, beyond);
                     let far_end = End::Edge {
                         at: event.at,
@@ -354,6 +357,27 @@ impl<'a> Probe<'a> {
         };
         self.is_stable_between(near, start)
             .then_some((near_end, far_end))
+    }
+
+    /// The near end of a range that begins where the search does: an edge, if the cavity is on one.
+    fn edge_at_nominal(&mut self, direction: f64) -> End {
+        let nominal = self.nominal;
+        if self.margin(nominal).abs() > EDGE {
+            return End::Open;
+        }
+        let way = self.cavity.one_way(&self.values);
+        let form = self.cavity.form();
+        let margin = |plane: &Plane| PlaneMode::of(form, way[*plane]).margin;
+        let plane = Plane::BOTH
+            .into_iter()
+            .min_by(|a, b| f64::total_cmp(&margin(a), &margin(b)))
+            .unwrap_or(Plane::Tangential);
+        let beside = nominal - direction * 1e-6 * self.scale;
+        End::Edge {
+            at: nominal,
+            plane,
+            touch: self.margin(beside) > 0.0,
+        }
     }
 
     fn is_stable_between(&mut self, a: f64, b: f64) -> bool {
@@ -399,9 +423,15 @@ impl<'a> Probe<'a> {
                 events.extend(found.into_iter().map(|at| Event { at, plane }));
             }
             let ahead = (stop - start).signum();
+            let same = SAME * self.scale;
+            // A root that misses zero by its rounding is there: a flat mirror, no length at all.
+            for event in &mut events {
+                if event.at.abs() <= same {
+                    event.at = 0.0;
+                }
+            }
             events.retain(|e| (e.at - start) * ahead > 0.0 && (stop - e.at) * ahead >= 0.0);
             events.sort_by(|a, b| f64::total_cmp(&(a.at * ahead), &(b.at * ahead)));
-            let same = SAME * self.scale;
             events.dedup_by(|b, a| (a.at - b.at).abs() <= same.max(SAME * a.at.abs()));
             return (events, stop);
         }

@@ -139,7 +139,51 @@ fn a_touch_ends_a_range_and_is_named() {
     let slot = cavity.book().find("d.length").unwrap();
     let range = stable_range(&cavity, slot).range.unwrap();
     assert!(matches!(range.to, End::Edge { at, touch: true, .. } if (at - 1.0).abs() < 1e-12));
-    assert!(range.from.value().is_some_and(|at| at.abs() < 1e-15));
+    assert_eq!(range.from, End::Zero { at: 0.0 });
+}
+
+/// From the edge itself the range begins at once: a confocal cavity is stable a little shorter and
+/// a little longer, and no change of half a metre is needed.
+#[test]
+fn a_range_can_begin_at_the_nominal_value() {
+    let cavity = load(
+        r#"
+        wavelength = "1064 nm"
+        form = "standing"
+        path = [
+          { mirror = "A", roc = "1 m" },
+          { gap = "d", length = "1 m" },
+          { mirror = "B", roc = "1 m" },
+        ]
+        "#,
+    );
+    let found = stable_range(&cavity, cavity.book().find("d.length").unwrap());
+    let range = found.range.unwrap();
+    assert!(matches!(range.from, End::Edge { at, touch: true, .. } if at == 1.0));
+    assert!(matches!(range.to, End::Edge { at, touch: false, .. } if (at - 2.0).abs() < 1e-12));
+    assert_eq!(found.change_needed, 0.0);
+}
+
+/// Flat is exactly flat where a range ends there, and a range that ends at no length says so.
+#[test]
+fn a_range_ends_at_flat_and_at_zero_exactly() {
+    let cavity = load(
+        r#"
+        wavelength = "1064 nm"
+        form = "standing"
+        path = [
+          { mirror = "A", roc = "flat" },
+          { gap = "d", length = "0.1 m" },
+          { mirror = "B", roc = "1 m" },
+        ]
+        "#,
+    );
+    let range = |address: &str| {
+        let slot = cavity.book().find(address).unwrap();
+        stable_range(&cavity, slot).range.unwrap()
+    };
+    assert!(matches!(range("B.roc").from, End::Edge { at: 0.0, .. }));
+    assert_eq!(range("d.length").from, End::Zero { at: 0.0 });
 }
 
 /// The same cavity written as a ring: there the touch is a double root of the half-trace itself.

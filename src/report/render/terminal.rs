@@ -59,6 +59,16 @@ fn style(tone: Tone) -> Style {
 }
 
 fn render_table(table: &Table) -> String {
+    let text = spaced_table(table, 1);
+    if text.lines().all(|line| line.chars().count() <= WIDTH) {
+        text
+    } else {
+        spaced_table(table, 0)
+    }
+}
+
+/// The table with two spaces between columns, or one.
+fn spaced_table(table: &Table, right: u16) -> String {
     let mut grid = comfy_table::Table::new();
     grid.load_style(comfy_table::presets::NOTHING);
     grid.set_content_arrangement(ContentArrangement::Disabled);
@@ -68,7 +78,7 @@ fn render_table(table: &Table) -> String {
     }
     for (index, column) in table.columns.iter().enumerate() {
         if let Some(rendered) = grid.column_mut(index) {
-            rendered.set_padding((if index == 0 { 2 } else { 1 }, 1));
+            rendered.set_padding((if index == 0 { 2 } else { 1 }, right));
             rendered.set_cell_alignment(match column.align {
                 Align::Left => CellAlignment::Left,
                 Align::Right => CellAlignment::Right,

@@ -101,10 +101,10 @@ fn verdict(document: &mut Document, check: &Check) {
 fn summary(document: &mut Document, check: &Check) {
     let trip = &check.round_trip;
     document.text(format!(
-        "{} cavity, {} nm, {} mm around, FSR {}",
+        "{} cavity, {} nm, {} around, FSR {}",
         check.form,
         plain(check.wavelength_m * 1e9, 6),
-        plain(trip.length_m * 1e3, 6),
+        length_to(trip.length_m, 6),
         frequency(trip.fsr_hz),
     ));
     let horizontal = if check.tangential_is_horizontal {
@@ -357,12 +357,19 @@ fn from_radius_order(curvature: f64) -> bool {
     curvature != 0.0
 }
 
-/// A length in millimetres, or in metres where those would be too many.
+/// A length in millimetres; in micrometres or metres where those would be too few or too many.
 fn length(x: f64) -> String {
-    if x.abs() < 100.0 {
-        format!("{} mm", plain(x * 1e3, 5))
+    length_to(x, 5)
+}
+
+/// The same with the given count of significant digits.
+fn length_to(x: f64, digits: usize) -> String {
+    if x != 0.0 && x.abs() < 1e-4 {
+        format!("{} µm", plain(x * 1e6, digits))
+    } else if x.abs() < 100.0 {
+        format!("{} mm", plain(x * 1e3, digits))
     } else {
-        format!("{} m", plain(x, 5))
+        format!("{} m", plain(x, digits))
     }
 }
 
@@ -518,11 +525,11 @@ fn round_trip(document: &mut Document, check: &Check) {
     document.push(Block::Table(matrices));
     let trip = &check.round_trip;
     document.text(format!(
-        "  {} reflections; {} mm geometric, {} mm optical, {} mm group",
+        "  {} reflections; {} geometric, {} optical, {} group",
         trip.reflections,
-        plain(trip.length_m * 1e3, 6),
-        plain(trip.optical_m * 1e3, 6),
-        plain(trip.group_m * 1e3, 6),
+        length_to(trip.length_m, 6),
+        length_to(trip.optical_m, 6),
+        length_to(trip.group_m, 6),
     ));
 }
 

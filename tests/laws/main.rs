@@ -1,6 +1,7 @@
 //! Laws that need no reference: properties over random cavities, and second roads to the same
 //! numbers.
 
+mod crystal_face;
 mod lanes;
 mod mode;
 mod ranges;

@@ -3,6 +3,9 @@
 //! recalled ("from memory") or computed independently from a published problem ("recomputed").
 
 mod indices;
+mod kids_1972;
 mod kogelnik_li;
+mod lens_like_media;
+mod lens_maker;
 mod real_cavities;
 mod second_sources;

@@ -100,7 +100,7 @@ const SHIPPED: [Expected; 17] = [
         0.5910,
         &[("absorber.spot", 127.2e-6), ("fsr", 99.82e6)],
     ),
-    // Half as long as it would be half-symmetric confocal: g = 1/4.
+    // Three quarters of its radius long: g = 1/4.
     good(
         "monolithic-crystal-resonator",
         0.5,

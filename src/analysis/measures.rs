@@ -396,13 +396,14 @@ impl<T: Real> Evaluation<'_, T> {
     }
 }
 
-/// The nominal value of one measure, in SI units; none where it does not exist.
-pub fn nominal(cavity: &Cavity, measure: Measure) -> Option<f64> {
+/// The value of one measure in SI units with the given values in the address book's slots; none
+/// where it does not exist.
+pub fn value(cavity: &Cavity, values: &[f64], measure: Measure) -> Option<f64> {
     let mut found = None;
     Evaluator::new(cavity, vec![measure]).evaluate(
-        &cavity.book().nominal(),
+        values,
         &mut Workspace::default(),
-        |_, value: f64, exists| found = exists.then_some(value),
+        |_, value, exists| found = exists.then_some(value),
     );
     found
 }

@@ -5,7 +5,7 @@
 use std::f64::consts::PI;
 
 use approx::assert_relative_eq;
-use modewright::analysis::measures::Figures;
+use modewright::analysis::measures;
 use modewright::analysis::ranges::{Range, stable_range};
 use modewright::cavity::{Cavity, Measure};
 use modewright::file;
@@ -244,7 +244,7 @@ fn zones_are_as_wide_as_the_stationary_spot_is_small() {
             let spot = |share: f64| {
                 let mut values = cavity.book().nominal();
                 values[slot.index()] = from + share * (to - from);
-                Figures::of(&cavity, &values).value(measure).unwrap()
+                measures::value(&cavity, &values, measure).unwrap()
             };
             // Flat at its least, so that a scan finds the value to the square of its step.
             const STEPS: usize = 4000;

@@ -198,7 +198,7 @@ pub(super) fn kind_of(value: &DeValue<'_>) -> &'static str {
 }
 
 /// The nearest known word to one that is not known.
-pub(super) fn nearest<'k>(word: &str, known: impl IntoIterator<Item = &'k str>) -> Option<&'k str> {
+pub(crate) fn nearest<'k>(word: &str, known: impl IntoIterator<Item = &'k str>) -> Option<&'k str> {
     known
         .into_iter()
         .map(|candidate| (strsim::jaro_winkler(word, candidate), candidate))

@@ -6,6 +6,7 @@ use std::ops::Range;
 use toml::de::{DeTable, DeValue};
 
 use super::context::{Context, Found, Raw, in_order, kind_of, nearest};
+use super::keys::{Holds, Key, holds, names};
 use crate::cavity::{Entry, Origin, Slot};
 use crate::diagnostic::Place;
 use crate::quantity::{Kind, Quantity, Spread};
@@ -44,6 +45,8 @@ pub(super) struct Fields<'c, 't> {
     /// Index of the part it describes.
     pub part: Option<usize>,
     defaults: Option<&'t DeTable<'t>>,
+    /// What it may hold.
+    keys: &'static [Key],
 }
 
 impl<'c, 't> Fields<'c, 't> {
@@ -55,7 +58,13 @@ impl<'c, 't> Fields<'c, 't> {
             owner: String::new(),
             part: None,
             defaults: None,
+            keys: &[],
         }
+    }
+
+    pub fn knowing(mut self, keys: &'static [Key]) -> Self {
+        self.keys = keys;
+        self
     }
 
     pub fn owned_by(mut self, owner: &str) -> Self {
@@ -82,12 +91,8 @@ impl<'c, 't> Fields<'c, 't> {
     }
 
     /// Reports every key that is not among the known ones.
-    pub fn refuse_unknown(
-        &self,
-        known: &[&str],
-        what: &str,
-        advice: impl Fn(&str) -> Option<&'static str>,
-    ) {
+    pub fn refuse_unknown(&self, what: &str, advice: impl Fn(&str) -> Option<&'static str>) {
+        let known = names(self.keys);
         for (key, span, _) in in_order(self.table) {
             if known.contains(&key) {
                 continue;
@@ -141,23 +146,32 @@ impl<'c, 't> Fields<'c, 't> {
             .map_or(self.place.clone(), |found| found.place)
     }
 
+    /// What a key measures.
+    fn kind(&self, key: &str) -> Kind {
+        match holds(self.keys, key) {
+            Some(Holds::Quantity(kind)) => kind,
+            _ => unreachable!("the tables of keys have no quantity `{key}` here"),
+        }
+    }
+
     /// Reports a key that must be there.
-    pub fn missing(&self, key: &str, kind: Kind, what: &str) {
+    pub fn missing(&self, key: &str, what: &str) {
         self.report(
             Some(self.place.clone()),
             format!("{what} needs `{key}`"),
-            &format!("add {key} = \"{}\"", kind.example()),
+            &format!("add {key} = \"{}\"", self.kind(key).example()),
         );
     }
 
     /// A quantity, without entering it anywhere.
-    pub fn quantity(&self, key: &str, kind: Kind) -> Option<Quantity> {
+    pub fn quantity(&self, key: &str) -> Option<Quantity> {
         let found = self.find(key)?;
-        self.context.quantity(key, &found, kind)
+        self.context.quantity(key, &found, self.kind(key))
     }
 
     /// A quantity entered into the address book.
-    pub fn slot(&self, key: &'static str, kind: Kind) -> Option<Slot> {
+    pub fn slot(&self, key: &'static str) -> Option<Slot> {
+        let kind = self.kind(key);
         let found = self.find(key)?;
         let quantity = self.context.quantity(key, &found, kind)?;
         let reciprocal = matches!(kind, Kind::Radius | Kind::Face | Kind::Focal);
@@ -179,29 +193,22 @@ impl<'c, 't> Fields<'c, 't> {
         let spread = self.context.spread(key, kind, quantity.value, own, &place);
         let address = self.address(key);
         self.context.places.borrow_mut().insert(address, place);
-        Some(self.enter(key, kind, value, spread, Origin::Written))
+        Some(self.enter(key, value, spread, Origin::Written))
     }
 
     /// A quantity entered into the address book, or the format's own default for it.
-    pub fn slot_or(&self, key: &'static str, kind: Kind, default: f64) -> Slot {
-        self.slot(key, kind)
-            .unwrap_or_else(|| self.enter(key, kind, default, Spread::Exact, Origin::Implied))
+    pub fn slot_or(&self, key: &'static str, default: f64) -> Slot {
+        self.slot(key)
+            .unwrap_or_else(|| self.enter(key, default, Spread::Exact, Origin::Implied))
     }
 
     /// Enters a number into the address book.
-    pub fn enter(
-        &self,
-        key: &'static str,
-        kind: Kind,
-        value: f64,
-        spread: Spread,
-        origin: Origin,
-    ) -> Slot {
+    pub fn enter(&self, key: &'static str, value: f64, spread: Spread, origin: Origin) -> Slot {
         self.context.book.borrow_mut().enter(Entry {
             address: self.address(key),
             part: self.part,
             key,
-            kind,
+            kind: self.kind(key),
             value,
             spread,
             origin,

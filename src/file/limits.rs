@@ -5,6 +5,7 @@ use toml::de::DeValue;
 
 use super::context::{Context, Raw, kind_of};
 use super::fields::Fields;
+use super::keys::LIMIT;
 use crate::cavity::{Bounds, Cavity, Limit, Measure, Presence};
 use crate::quantity::Kind;
 
@@ -29,12 +30,8 @@ pub(super) fn read_limit<'t>(
         );
         return None;
     };
-    let fields = Fields::new(context, table, value.span());
-    fields.refuse_unknown(
-        &["of", "above", "below", "between", "up_to"],
-        "a limit",
-        |_| None,
-    );
+    let fields = Fields::new(context, table, value.span()).knowing(&LIMIT);
+    fields.refuse_unknown("a limit", |_| None);
     let Some((name, place)) = fields.text("of") else {
         if !fields.has("of") {
             context.report(
@@ -104,7 +101,8 @@ fn read_bounds(fields: &Fields<'_, '_>, kind: Kind) -> Option<Bounds> {
         return None;
     };
     if key != "between" {
-        let value = fields.quantity(key, kind)?.value.number()?;
+        let found = fields.find(key)?;
+        let value = fields.context.quantity(key, &found, kind)?.value.number()?;
         return Some(if key == "above" {
             Bounds::Above(value)
         } else {

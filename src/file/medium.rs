@@ -43,7 +43,7 @@ pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: I
 
 /// `material` with its `axis`, or `index` with its `group_index`.
 pub(super) fn read_slab_medium(fields: &Fields<'_, '_>) -> Option<Index> {
-    let own_temperature = fields.slot("temperature", Kind::Temperature);
+    let own_temperature = fields.slot("temperature");
     let Some((name, place)) = fields.text("material") else {
         if fields.has("material") {
             return None;
@@ -130,8 +130,8 @@ fn find_material(
 
 /// `index` and `group_index`.
 pub(super) fn read_index(fields: &Fields<'_, '_>, what: &str) -> Option<Index> {
-    let phase = required(fields, "index", Kind::Number, what)?;
-    let group = fields.slot("group_index", Kind::Number);
+    let phase = required(fields, "index", what)?;
+    let group = fields.slot("group_index");
     let nominal = fields.context.book.borrow().nominal();
     let mut good = true;
     for (key, slot) in [("index", Some(phase)), ("group_index", group)] {

@@ -1,28 +1,26 @@
 //! Mirrors: shape, fold, coating and substrate.
 
 use super::fields::Fields;
+use super::keys::SIDES;
 use super::medium::read_medium;
 use super::parts::read_pair;
 use crate::cavity::{Coating, Element, Index, Mirror, Side, Substrate};
 use crate::diagnostic::Place;
-use crate::quantity::Kind;
 
-pub(super) const SIDES: [&str; 4] = ["left", "right", "up", "down"];
 const BY_SIDE: [Side; 4] = [Side::Left, Side::Right, Side::Up, Side::Down];
 
 pub(super) fn read_mirror(fields: &Fields<'_, '_>) -> Option<Element> {
     let curvature = read_pair(
         fields,
         ["roc", "roc_tangential", "roc_sagittal"],
-        Kind::Radius,
         "a mirror",
     );
-    let incidence = fields.slot_or("aoi", Kind::Angle, 0.0);
+    let incidence = fields.slot_or("aoi", 0.0);
     let fold = read_fold(fields);
     let (coating_s, coating_p) = read_coatings(fields);
     let substrate = read_substrate(fields);
-    fields.slot("damage", Kind::Damage);
-    fields.slot("pointing", Kind::Angle);
+    fields.slot("damage");
+    fields.slot("pointing");
     Some(Element::Mirror(Mirror {
         curvature: curvature?,
         incidence,
@@ -60,7 +58,7 @@ fn read_fold(fields: &Fields<'_, '_>) -> Option<Side> {
         }
         return read_side(fields, "fold");
     }
-    let angle = fields.quantity("fold_plane", Kind::Angle)?.value.number()?;
+    let angle = fields.quantity("fold_plane")?.value.number()?;
     let quarter = angle / std::f64::consts::FRAC_PI_2;
     // Degrees in a file come out exact to rounding.
     if (quarter - quarter.round()).abs() > 1e-9 {
@@ -89,7 +87,7 @@ const COATING: [[&str; 3]; 3] = [
 const SHARES_WITHIN: f64 = 1e-9;
 
 fn read_coatings(fields: &Fields<'_, '_>) -> (Coating, Coating) {
-    let [plain, s, p] = COATING.map(|keys| keys.map(|key| fields.slot(key, Kind::Ratio)));
+    let [plain, s, p] = COATING.map(|keys| keys.map(|key| fields.slot(key)));
     let merged = |own: [Option<crate::cavity::Slot>; 3], keys: [&str; 3]| {
         // What is written for one polarisation stands; the plain key serves both.
         let [reflectance, transmission, loss] = [0, 1, 2].map(|k| own[k].or(plain[k]));
@@ -149,14 +147,14 @@ fn read_substrate(fields: &Fields<'_, '_>) -> Option<Substrate> {
         return None;
     }
     let medium = read_medium(fields, "substrate", Index::VACUUM);
-    let back = fields.slot_or("back", Kind::Face, 0.0);
+    let back = fields.slot_or("back", 0.0);
     if !fields.has("thickness") {
-        fields.missing("thickness", Kind::Length, "a mirror's substrate");
+        fields.missing("thickness", "a mirror's substrate");
         return None;
     }
     Some(Substrate {
         index: medium,
-        thickness: fields.slot("thickness", Kind::Length)?,
+        thickness: fields.slot("thickness")?,
         back,
     })
 }

@@ -4,12 +4,15 @@
 
 mod context;
 mod fields;
+mod keys;
 mod limits;
 mod medium;
 mod mirror;
 mod parts;
 mod plain;
+pub mod schema;
 mod slab;
+pub mod starters;
 mod ties;
 
 use std::cell::{Cell, RefCell};
@@ -22,8 +25,10 @@ use toml::de::{DeTable, DeValue};
 use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Polarisation, Slot};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
 use crate::quantity::{self, Kind, QuantityError, Spread};
-use context::{Context, Override, in_order, nearest};
+pub(crate) use context::nearest;
+use context::{Context, Override, in_order};
 use fields::Fields;
+use keys::{FORMS, GENERAL, KINDS, TOP};
 
 /// Largest file that is read, in bytes.
 pub const LARGEST_FILE: usize = 1 << 20;
@@ -33,28 +38,6 @@ pub const MOST_PARTS: usize = 1000;
 
 /// Room temperature, the default of `temperature`, in kelvin.
 const ROOM_TEMPERATURE: f64 = 293.15;
-
-const TOP: [&str; 19] = [
-    "title",
-    "notes",
-    "wavelength",
-    "form",
-    "ambient",
-    "temperature",
-    "polarisation",
-    "path",
-    "feed",
-    "source",
-    "sidebands",
-    "pump",
-    "limits",
-    "ties",
-    "general",
-    "defaults",
-    "tolerance",
-    "input",
-    "highest_order",
-];
 
 /// A file that has been read.
 #[derive(Clone, Debug)]
@@ -194,8 +177,8 @@ fn read_file<'t>(
     let ties = read_ties(&context, top);
     context.tied = ties.iter().map(|tie| tie.target.clone()).collect();
     let context = context;
-    let fields = Fields::new(&context, top, whole);
-    fields.refuse_unknown(&TOP, "a cavity file", |key| match key {
+    let fields = Fields::new(&context, top, whole).knowing(&TOP);
+    fields.refuse_unknown("a cavity file", |key| match key {
         "lambda" | "lam" => Some("the wavelength in vacuum is `wavelength`"),
         "mirrors" | "parts" | "elements" | "optics" => {
             Some("the parts are listed in `path`, as the beam meets them")
@@ -268,7 +251,7 @@ fn read_file<'t>(
 
 /// The numbers of the whole cavity, in the slots that [`Cavity`] expects them in.
 fn enter_globals(fields: &Fields<'_, '_>) {
-    let wavelength = fields.slot_or("wavelength", Kind::Length, 0.0);
+    let wavelength = fields.slot_or("wavelength", 0.0);
     if !fields.has("wavelength") {
         fields.report(
             None,
@@ -284,8 +267,8 @@ fn enter_globals(fields: &Fields<'_, '_>) {
             "write it like wavelength = \"1064 nm\"",
         );
     }
-    let temperature = fields.slot_or("temperature", Kind::Temperature, ROOM_TEMPERATURE);
-    let pump = fields.slot_or("pump", Kind::Power, 0.0);
+    let temperature = fields.slot_or("temperature", ROOM_TEMPERATURE);
+    let pump = fields.slot_or("pump", 0.0);
     debug_assert_eq!(
         [wavelength, temperature, pump],
         [Cavity::WAVELENGTH, Cavity::TEMPERATURE, Cavity::PUMP]
@@ -300,7 +283,7 @@ fn read_form(fields: &Fields<'_, '_>) -> Option<Form> {
             "add form = \"standing\" (from one end mirror to the other) or form = \"ring\"",
         );
     }
-    match fields.word("form", &["standing", "ring"])? {
+    match fields.word("form", &FORMS)? {
         0 => Some(Form::Standing),
         _ => Some(Form::Ring),
     }
@@ -311,8 +294,8 @@ fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
     let (table, _) = fields.table("defaults", advice)?;
     for (kind, span, value) in in_order(table) {
         let place = Some(fields.context.place(span));
-        let Some((_, known)) = parts::KINDS.iter().find(|(name, _)| *name == kind) else {
-            let names: Vec<&str> = parts::KINDS.iter().map(|(name, _)| *name).collect();
+        let Some(known) = KINDS.iter().find(|known| known.name == kind) else {
+            let names = KINDS.map(|known| known.name);
             fields.report(
                 place,
                 format!("\"{kind}\" is no kind of part"),
@@ -322,7 +305,8 @@ fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
         };
         match value.get_ref() {
             DeValue::Table(inner) => Fields::new(fields.context, inner, value.span())
-                .refuse_unknown(&known[1..], &format!("a {kind}"), |_| None),
+                .knowing(&known.keys[1..])
+                .refuse_unknown(&format!("a {kind}"), |_| None),
             _ => fields.report(
                 place,
                 format!("the defaults of a {kind} are a table"),
@@ -340,7 +324,7 @@ fn read_general(fields: &Fields<'_, '_>) {
     };
     for (key, key_span, value) in in_order(table) {
         let Some(kind) = toleranced_kind(key) else {
-            let help = match nearest(key, TOLERANCED.iter().map(|(key, _)| *key)) {
+            let help = match nearest(key, GENERAL.iter().map(|(key, _)| *key)) {
                 Some(near) => format!("did you mean `{near}`?"),
                 None => advice.to_string(),
             };
@@ -375,28 +359,8 @@ fn read_general(fields: &Fields<'_, '_>) {
     }
 }
 
-/// Keys that can have a general tolerance, with the kind of what they tolerate.
-const TOLERANCED: [(&str, Kind); 16] = [
-    ("length", Kind::Length),
-    ("thickness", Kind::Length),
-    ("roc", Kind::Radius),
-    ("entrance", Kind::Face),
-    ("exit", Kind::Face),
-    ("back", Kind::Face),
-    ("focal", Kind::Focal),
-    ("diameter", Kind::Length),
-    ("aoi", Kind::Angle),
-    ("pointing", Kind::Angle),
-    ("thermal", Kind::Curvature),
-    ("strength", Kind::Strength),
-    ("index", Kind::Number),
-    ("reflectance", Kind::Ratio),
-    ("transmission", Kind::Ratio),
-    ("loss", Kind::Ratio),
-];
-
 fn toleranced_kind(key: &str) -> Option<Kind> {
-    TOLERANCED
+    GENERAL
         .iter()
         .find(|(name, _)| *name == key)
         .map(|(_, kind)| *kind)

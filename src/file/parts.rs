@@ -5,112 +5,13 @@ use toml::de::{DeTable, DeValue};
 
 use super::context::{Context, in_order, kind_of};
 use super::fields::Fields;
+use super::keys::{KINDS, PROFILES, PartKind, SLIT_PLANES};
 use super::medium::{read_index, read_medium};
 use super::mirror::read_mirror;
 use super::slab::read_slab;
 use crate::cavity::{Element, Index, Opening, Origin, Part, Slot};
 use crate::optics::{PerPlane, Plane};
-use crate::quantity::{Kind, Spread};
-
-/// Kinds of parts and the keys each knows.
-pub(super) const KINDS: [(&str, &[&str]); 7] = [
-    (
-        "mirror",
-        &[
-            "mirror",
-            "roc",
-            "roc_tangential",
-            "roc_sagittal",
-            "aoi",
-            "fold",
-            "fold_plane",
-            "reflectance",
-            "reflectance_s",
-            "reflectance_p",
-            "transmission",
-            "transmission_s",
-            "transmission_p",
-            "loss",
-            "loss_s",
-            "loss_p",
-            "diameter",
-            "width",
-            "height",
-            "clear",
-            "thickness",
-            "substrate",
-            "back",
-            "damage",
-            "pointing",
-            "notes",
-        ],
-    ),
-    ("gap", &["gap", "length", "medium", "notes"]),
-    (
-        "lens",
-        &[
-            "lens",
-            "focal",
-            "focal_tangential",
-            "focal_sagittal",
-            "loss",
-            "diameter",
-            "notes",
-        ],
-    ),
-    (
-        "slab",
-        &[
-            "slab",
-            "thickness",
-            "material",
-            "axis",
-            "index",
-            "group_index",
-            "temperature",
-            "aoi",
-            "shift",
-            "entrance",
-            "exit",
-            "thermal",
-            "thermal_tangential",
-            "thermal_sagittal",
-            "thermal_per_watt",
-            "thermal_per_watt_tangential",
-            "thermal_per_watt_sagittal",
-            "thermal_at",
-            "loss",
-            "conversion",
-            "diameter",
-            "width",
-            "height",
-            "clear",
-            "notes",
-        ],
-    ),
-    (
-        "duct",
-        &[
-            "duct",
-            "length",
-            "index",
-            "group_index",
-            "strength",
-            "strength_tangential",
-            "strength_sagittal",
-            "profile",
-            "notes",
-        ],
-    ),
-    (
-        "aperture",
-        &["aperture", "radius", "half_width", "plane", "notes"],
-    ),
-    (
-        "matrix",
-        &["matrix", "tangential", "sagittal", "length", "notes"],
-    ),
-];
+use crate::quantity::Spread;
 
 /// Names a part cannot have: they begin addresses and measures of the whole cavity.
 const RESERVED: [&str; 19] = [
@@ -136,7 +37,7 @@ const RESERVED: [&str; 19] = [
 ];
 
 /// Longest name of a part, in characters: longer ones do not fit a table of results.
-const LONGEST_NAME: usize = 24;
+pub(super) const LONGEST_NAME: usize = 24;
 
 /// What a practitioner may well write, and what to write instead.
 fn advice(kind: &str, key: &str) -> Option<&'static str> {
@@ -183,16 +84,24 @@ pub(super) fn read_part<'t>(
         );
         return None;
     };
-    let kinds: Vec<&(&str, &[&str])> = KINDS
+    let kinds: Vec<&PartKind> = KINDS
         .iter()
-        .filter(|(kind, _)| table.contains_key(*kind))
+        .filter(|kind| table.contains_key(kind.name))
         .collect();
-    let [(kind, known)] = kinds[..] else {
-        let names: Vec<&str> = KINDS.iter().map(|(kind, _)| *kind).collect();
+    let [
+        PartKind {
+            name: kind, keys, ..
+        },
+    ] = kinds[..]
+    else {
+        let names = KINDS.map(|kind| kind.name);
         let message = if kinds.is_empty() {
             "this part does not say what it is".to_string()
         } else {
-            format!("this part is a {} and a {} at once", kinds[0].0, kinds[1].0)
+            format!(
+                "this part is a {} and a {} at once",
+                kinds[0].name, kinds[1].name
+            )
         };
         let first = in_order(table).into_iter().next();
         context.report(
@@ -206,27 +115,26 @@ pub(super) fn read_part<'t>(
         return None;
     };
 
-    let fields = Fields::new(context, table, value.span());
+    let fields = Fields::new(context, table, value.span()).knowing(keys);
     let name = read_name(&fields, kind)?;
     let defaults = defaults
         .and_then(|all| all.get(*kind))
         .and_then(|value| value.get_ref().as_table());
     let fields = fields.owned_by(&name).for_part(index, defaults);
-    fields.refuse_unknown(known, &format!("a {kind}"), |key| advice(kind, key));
+    fields.refuse_unknown(&format!("a {kind}"), |key| advice(kind, key));
     fields.text("notes");
 
     let element = match *kind {
         "mirror" => read_mirror(&fields)?,
         "gap" => Element::Gap {
-            length: required(&fields, "length", Kind::Length, "a gap")?,
+            length: required(&fields, "length", "a gap")?,
             medium: read_medium(&fields, "medium", ambient),
         },
         "lens" => Element::Lens {
-            loss: fields.slot("loss", Kind::Ratio),
+            loss: fields.slot("loss"),
             power: read_pair(
                 &fields,
                 ["focal", "focal_tangential", "focal_sagittal"],
-                Kind::Focal,
                 "a lens",
             )?,
         },
@@ -243,7 +151,7 @@ pub(super) fn read_part<'t>(
     let clear = match *kind {
         // Coatings and polish end before the rim: common practice, no source.
         "mirror" | "slab" => fields
-            .slot("clear", Kind::Ratio)
+            .slot("clear")
             .map_or(0.9, |slot| slot.of(&context.book.borrow().nominal())),
         _ => 1.0,
     };
@@ -288,28 +196,22 @@ fn read_name(fields: &Fields<'_, '_>, kind: &str) -> Option<String> {
 }
 
 /// A number that must be there, entered into the address book.
-pub(super) fn required(
-    fields: &Fields<'_, '_>,
-    key: &'static str,
-    kind: Kind,
-    what: &str,
-) -> Option<Slot> {
+pub(super) fn required(fields: &Fields<'_, '_>, key: &'static str, what: &str) -> Option<Slot> {
     if !fields.has(key) {
         // A tied number may be left out: its value follows.
         if fields.context.is_tied(&fields.address(key)) {
-            return Some(fields.enter(key, kind, 0.0, Spread::Exact, Origin::Tied));
+            return Some(fields.enter(key, 0.0, Spread::Exact, Origin::Tied));
         }
-        fields.missing(key, kind, what);
+        fields.missing(key, what);
         return None;
     }
-    fields.slot(key, kind)
+    fields.slot(key)
 }
 
 /// One number for both planes, or one for each.
 pub(super) fn read_pair(
     fields: &Fields<'_, '_>,
     [both, tangential, sagittal]: [&'static str; 3],
-    kind: Kind,
     what: &str,
 ) -> Option<PerPlane<Slot>> {
     let apart = fields.has(tangential) || fields.has(sagittal);
@@ -323,27 +225,26 @@ pub(super) fn read_pair(
     }
     if apart {
         let pair = (
-            required(fields, tangential, kind, what),
-            required(fields, sagittal, kind, what),
+            required(fields, tangential, what),
+            required(fields, sagittal, what),
         );
         return Some(PerPlane {
             tangential: pair.0?,
             sagittal: pair.1?,
         });
     }
-    required(fields, both, kind, what).map(PerPlane::both)
+    required(fields, both, what).map(PerPlane::both)
 }
 
 fn read_duct(fields: &Fields<'_, '_>) -> Option<Element> {
-    let length = required(fields, "length", Kind::Length, "a duct");
+    let length = required(fields, "length", "a duct");
     let index = read_index(fields, "a duct");
     let strength = read_pair(
         fields,
         ["strength", "strength_tangential", "strength_sagittal"],
-        Kind::Strength,
         "a duct",
     );
-    let antiguiding = fields.word("profile", &["guiding", "antiguiding"]) == Some(1);
+    let antiguiding = fields.word("profile", &PROFILES) == Some(1);
     Some(Element::Duct {
         length: length?,
         index: index?,
@@ -366,11 +267,11 @@ fn read_hole(fields: &Fields<'_, '_>) -> Option<Opening> {
     }
     if round {
         return Some(Opening::Hole {
-            radius: fields.slot("radius", Kind::Length)?,
+            radius: fields.slot("radius")?,
         });
     }
-    let half_width = required(fields, "half_width", Kind::Length, "a slit");
-    let plane = fields.word("plane", &["tangential", "sagittal"]);
+    let half_width = required(fields, "half_width", "a slit");
+    let plane = fields.word("plane", &SLIT_PLANES);
     if plane.is_none() && !fields.has("plane") {
         fields.report(
             Some(fields.place.clone()),
@@ -395,13 +296,13 @@ fn read_opening(fields: &Fields<'_, '_>) -> Option<Opening> {
             );
         }
         return fields
-            .slot("diameter", Kind::Length)
+            .slot("diameter")
             .map(|diameter| Opening::Round { diameter });
     }
     if width || height {
         return Some(Opening::Rectangle {
-            width: required(fields, "width", Kind::Length, "a rectangular optic")?,
-            height: required(fields, "height", Kind::Length, "a rectangular optic")?,
+            width: required(fields, "width", "a rectangular optic")?,
+            height: required(fields, "height", "a rectangular optic")?,
         });
     }
     None
@@ -409,7 +310,7 @@ fn read_opening(fields: &Fields<'_, '_>) -> Option<Opening> {
 
 fn read_matrix(fields: &Fields<'_, '_>) -> Option<Element> {
     let entries = PerPlane::from_fn(|plane| read_entries(fields, plane.name()));
-    let length = fields.slot_or("length", Kind::Length, 0.0);
+    let length = fields.slot_or("length", 0.0);
     Some(Element::Matrix {
         entries: PerPlane {
             tangential: entries.tangential?,

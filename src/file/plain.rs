@@ -5,40 +5,18 @@ use toml::de::{DeTable, DeValue};
 
 use super::context::{Context, in_order};
 use super::fields::Fields;
+use super::keys::{Holds, POLARISATIONS, SHAPES, SOURCE, TOLERANCE};
 use super::limits::read_order;
 use super::parts::read_part;
 use crate::cavity::{Cavity, Index};
 use crate::quantity::Kind;
-
-/// Keys of a source with their kinds; texts have none.
-const SOURCE: [(&str, Option<Kind>); 19] = [
-    ("waist", Some(Kind::Length)),
-    ("at", Some(Kind::Position)),
-    ("waist_tangential", Some(Kind::Length)),
-    ("at_tangential", Some(Kind::Position)),
-    ("waist_sagittal", Some(Kind::Length)),
-    ("at_sagittal", Some(Kind::Position)),
-    ("spot", Some(Kind::Length)),
-    ("wavefront", Some(Kind::Curvature)),
-    ("mode_field", Some(Kind::Length)),
-    ("m2", Some(Kind::Number)),
-    ("power", Some(Kind::Power)),
-    ("energy", Some(Kind::Energy)),
-    ("offset_tangential", Some(Kind::Position)),
-    ("offset_sagittal", Some(Kind::Position)),
-    ("tilt_tangential", Some(Kind::Angle)),
-    ("tilt_sagittal", Some(Kind::Angle)),
-    ("cavity", None),
-    ("mirror", None),
-    ("notes", None),
-];
 
 /// Reads what the top level holds for later work.
 pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
     let context = fields.context;
     fields.text("title");
     fields.text("notes");
-    fields.word("polarisation", &["s", "p"]);
+    fields.word("polarisation", &POLARISATIONS);
     if let Some(found) = fields.find("highest_order")
         && read_order(&found.raw).is_none()
     {
@@ -57,12 +35,14 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
         "source",
         "write it like { waist = \"350 um\", at = \"-600 mm\" }",
     ) {
-        let source = Fields::new(context, table, span).owned_by("source");
-        source.refuse_unknown(&SOURCE.map(|(key, _)| key), "a source", |_| None);
-        for (key, kind) in SOURCE {
-            match kind {
-                Some(kind) => drop(source.slot(key, kind)),
-                None => drop(source.text(key)),
+        let source = Fields::new(context, table, span)
+            .owned_by("source")
+            .knowing(&SOURCE);
+        source.refuse_unknown("a source", |_| None);
+        for key in SOURCE {
+            match key.holds {
+                Holds::Quantity(_) => drop(source.slot(key.name)),
+                _ => drop(source.text(key.name)),
             }
         }
     }
@@ -77,15 +57,11 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
     }
 }
 
-const SHAPES: [&str; 2] = ["rectangular", "normal"];
-
 fn read_tolerance<'t>(context: &Context<'t>, table: &'t DeTable<'t>) {
-    let fields = Fields::new(context, table, 0..0).owned_by("tolerance");
-    fields.refuse_unknown(
-        &["shape", "shapes", "groups", "adjust", "cost"],
-        "`tolerance`",
-        |_| None,
-    );
+    let fields = Fields::new(context, table, 0..0)
+        .owned_by("tolerance")
+        .knowing(&TOLERANCE);
+    fields.refuse_unknown("`tolerance`", |_| None);
     fields.word("shape", &SHAPES);
     if let Some((shapes, span)) =
         fields.table("shapes", "write it like { \"M3.roc\" = \"normal\" }")

@@ -1,6 +1,7 @@
 //! Slabs: plates, rods and crystals with their faces and thermal lenses.
 
 use super::fields::Fields;
+use super::keys::THERMAL_PLACES;
 use super::medium::read_slab_medium;
 use super::mirror::read_side;
 use super::parts::{read_pair, required};
@@ -8,7 +9,7 @@ use crate::cavity::{Element, Incidence, Side, Slab, SlabLoss, ThermalLens, Therm
 use crate::quantity::{Kind, Value};
 
 pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
-    let thickness = required(fields, "thickness", Kind::Length, "a slab");
+    let thickness = required(fields, "thickness", "a slab");
     let index = read_slab_medium(fields);
     let incidence = read_incidence(fields);
     let shift = if fields.has("shift") {
@@ -16,11 +17,11 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
     } else {
         Some(Side::Left)
     };
-    let entrance = fields.slot_or("entrance", Kind::Face, 0.0);
-    let exit = fields.slot_or("exit", Kind::Face, 0.0);
+    let entrance = fields.slot_or("entrance", 0.0);
+    let exit = fields.slot_or("exit", 0.0);
     let thermal = read_thermal(fields);
     let loss = read_loss(fields);
-    fields.slot("conversion", Kind::PerWatt);
+    fields.slot("conversion");
     if let (Some(slot), Some(found)) = (thickness, fields.find("thickness"))
         && slot.of(&fields.context.book.borrow().nominal()) <= 0.0
     {
@@ -46,7 +47,7 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
 fn read_loss(fields: &Fields<'_, '_>) -> Option<SlabLoss> {
     let found = fields.find("loss")?;
     let quantity = fields.context.quantity("loss", &found, Kind::Loss)?;
-    let slot = fields.slot("loss", Kind::Loss)?;
+    let slot = fields.slot("loss")?;
     Some(match quantity.value {
         Value::PerLength(_) => SlabLoss::PerLength(slot),
         _ => SlabLoss::PerPass(slot),
@@ -55,20 +56,19 @@ fn read_loss(fields: &Fields<'_, '_>) -> Option<SlabLoss> {
 
 fn read_incidence(fields: &Fields<'_, '_>) -> Incidence {
     let brewster = fields
-        .find("aoi")
-        .and_then(|found| fields.context.quantity("aoi", &found, Kind::SlabAngle))
+        .quantity("aoi")
         .is_some_and(|quantity| quantity.value == Value::Brewster);
     if brewster {
         return Incidence::Brewster;
     }
-    Incidence::Angle(fields.slot_or("aoi", Kind::SlabAngle, 0.0))
+    Incidence::Angle(fields.slot_or("aoi", 0.0))
 }
 
 fn read_thermal(fields: &Fields<'_, '_>) -> Option<ThermalLens> {
     let pair = |keys: [&'static str; 3]| {
         keys.iter()
             .any(|key| fields.has(key) || fields.context.is_tied(&fields.address(key)))
-            .then(|| read_pair(fields, keys, Kind::Curvature, "a slab"))
+            .then(|| read_pair(fields, keys, "a slab"))
             .flatten()
     };
     let power = pair(["thermal", "thermal_tangential", "thermal_sagittal"]);
@@ -77,8 +77,7 @@ fn read_thermal(fields: &Fields<'_, '_>) -> Option<ThermalLens> {
         "thermal_per_watt_tangential",
         "thermal_per_watt_sagittal",
     ]);
-    let places = ["spread", "entrance", "middle", "exit"];
-    let place = match fields.word("thermal_at", &places) {
+    let place = match fields.word("thermal_at", &THERMAL_PLACES) {
         Some(1) => ThermalPlace::Entrance,
         Some(2) => ThermalPlace::Middle,
         Some(3) => ThermalPlace::Exit,

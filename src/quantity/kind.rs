@@ -1,6 +1,6 @@
 //! What a quantity measures.
 
-use super::unit::{Dimension, Unit};
+use super::unit::{Dimension, UNITS, Unit};
 
 /// What a quantity measures: decides the units accepted, the SI unit of its value, which signs it
 /// may have, and whether a spread in % is relative or in points.
@@ -191,6 +191,14 @@ impl Kind {
             Kind::PerWatt => &[Dimension::PerWatt],
             Kind::Damage => &[Dimension::Intensity, Dimension::Fluence],
         }
+    }
+
+    /// The units it is written in.
+    pub fn units(self) -> impl Iterator<Item = Unit> {
+        UNITS
+            .iter()
+            .copied()
+            .filter(move |unit| self.accepts(*unit))
     }
 
     /// Whether a number with this unit can be a quantity of this kind.

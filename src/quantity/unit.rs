@@ -222,6 +222,12 @@ impl Unit {
         self.names.first().copied().unwrap_or_default()
     }
 
+    /// Every spelling that is read, the printed one first; its micro sign is U+00B5, and U+03BC
+    /// serves as well.
+    pub fn names(self) -> &'static [&'static str] {
+        self.names
+    }
+
     /// Its name as typed on a plain keyboard.
     pub(super) fn keyboard_name(self) -> &'static str {
         let plain = self.names.iter().find(|name| name.is_ascii());

@@ -7,6 +7,7 @@ pub mod eigenmode;
 pub mod envelope;
 pub mod leaving;
 pub mod lengths;
+pub mod materials;
 pub mod measures;
 pub mod ranges;
 pub mod spectrum;

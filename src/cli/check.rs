@@ -7,6 +7,10 @@ use crate::analysis;
 use crate::report::{describe, render};
 
 #[derive(Args)]
+#[command(after_help = "\
+Examples:
+  modewright check laser.toml
+  modewright check laser.toml --set 'M2.roc=75 mm' --json")]
 pub(super) struct Typed {
     #[command(flatten)]
     cavity: CavityFile,

@@ -1,12 +1,14 @@
-//! Reading a cavity file from disk.
+//! Reading what was typed: a cavity file from disk, a quantity behind an option.
 
 use std::fs::File;
 use std::io::Read;
+use std::ops::Range;
 use std::path::Path;
 
 use super::{Answer, CavityFile, WRONG_INPUT};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
 use crate::file::{self, LARGEST_FILE, Loaded};
+use crate::quantity::{self, Kind, Spread};
 use crate::report::render;
 
 /// The cavity that was typed, or what is wrong with it.
@@ -23,6 +25,63 @@ fn refuse(diagnostics: &[Diagnostic], sources: &[Source]) -> Answer {
         err: render::diagnostics::render(diagnostics, sources),
         status: WRONG_INPUT,
     }
+}
+
+/// What is typed for an argument, as a quantity in SI units; `unit` is the one to propose.
+pub(super) fn quantity(
+    argument: &str,
+    text: Option<&str>,
+    kind: Kind,
+    unit: &str,
+) -> Result<Option<f64>, Answer> {
+    let Some(text) = text else {
+        return Ok(None);
+    };
+    let refuse = |span: Range<usize>, message, help| {
+        let span = if span.is_empty() { 0..text.len() } else { span };
+        refuse_argument(argument, text, span, message, help)
+    };
+    let quantity = quantity::parse(text, kind).map_err(|error| {
+        // The usual unit of a length is no wavelength's.
+        let bare = text.trim().parse::<f64>().ok();
+        let help = bare.map(|_| format!("write \"{} {unit}\"", text.trim()));
+        refuse(error.span, error.message, help.or(error.help))
+    })?;
+    match quantity.value.number() {
+        Some(_) if quantity.spread != Spread::Exact => Err(refuse(
+            0..0,
+            "one value is asked for here, and this one has a spread".into(),
+            Some(format!("write it like \"{}\"", kind.example())),
+        )),
+        Some(number) => Ok(Some(number)),
+        None => Err(refuse(
+            0..0,
+            format!("{} is wanted here", kind.phrase()),
+            Some(format!("write it like \"{}\"", kind.example())),
+        )),
+    }
+}
+
+/// What is wrong with the text of an argument.
+pub(super) fn refuse_argument(
+    argument: &str,
+    text: &str,
+    span: Range<usize>,
+    message: String,
+    help: Option<String>,
+) -> Answer {
+    let diagnostic = Diagnostic {
+        severity: Severity::Error,
+        message,
+        place: Some(Place { source: 0, span }),
+        label: String::new(),
+        help,
+    };
+    let source = Source {
+        name: argument.into(),
+        text: text.into(),
+    };
+    refuse(&[diagnostic], &[source])
 }
 
 fn read(path: &Path, name: &str) -> Result<String, Answer> {

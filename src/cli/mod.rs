@@ -5,6 +5,10 @@
 
 mod check;
 mod input;
+mod manual;
+mod materials;
+mod new;
+mod schema;
 
 use std::ffi::OsString;
 use std::io::{ErrorKind, Write};
@@ -13,6 +17,10 @@ use std::process::ExitCode;
 
 use anstream::{AutoStream, ColorChoice};
 use clap::{Args, Parser, Subcommand, ValueEnum};
+use serde::Serialize;
+
+use crate::report::document::Document;
+use crate::report::render;
 
 /// Done, and all is well.
 const FINE: u8 = 0;
@@ -24,7 +32,7 @@ const WRONG_INPUT: u8 = 2;
 const FAULT: u8 = 3;
 
 /// Commands that are named but cannot be given yet.
-const LATER: [&str; 15] = [
+const LATER: [&str; 12] = [
     "modes",
     "response",
     "couple",
@@ -37,15 +45,12 @@ const LATER: [&str; 15] = [
     "layout",
     "report",
     "live",
-    "new",
-    "materials",
-    "schema",
 ];
 
 /// Design lasers and optical cavities: is it stable with real parts, how large is the beam on
 /// every optic, and what comes out?
 #[derive(Parser)]
-#[command(name = "modewright", version, about, max_term_width = 100)]
+#[command(name = "modewright", version, about, max_term_width = 80)]
 struct Typed {
     #[command(subcommand)]
     command: Command,
@@ -65,6 +70,16 @@ enum Colour {
 enum Command {
     /// Is the cavity stable, how far may each part move, how large is the beam everywhere?
     Check(check::Typed),
+    /// Which materials are known, with their sources, and what is their index at a wavelength?
+    Materials(materials::Typed),
+    /// Print or write a cavity file to start from
+    New(new::Typed),
+    /// Print the JSON Schema of a cavity file
+    Schema(schema::Typed),
+    /// Print what a shell needs to complete commands and options
+    Completions(manual::Completions),
+    /// Print the manual page of the program or of a command
+    Manual(manual::Manual),
     #[command(external_subcommand)]
     Other(Vec<OsString>),
 }
@@ -86,6 +101,44 @@ struct Answer {
     status: u8,
 }
 
+impl Answer {
+    fn fine(out: String) -> Answer {
+        Answer {
+            out,
+            err: String::new(),
+            status: FINE,
+        }
+    }
+
+    fn wrong(err: String) -> Answer {
+        Answer {
+            out: String::new(),
+            err,
+            status: WRONG_INPUT,
+        }
+    }
+}
+
+/// A good answer about no file, as JSON or as a document.
+fn finish<R: Serialize>(
+    command: &str,
+    json: bool,
+    result: &R,
+    describe: impl FnOnce() -> Document,
+) -> Answer {
+    if !json {
+        return Answer::fine(render::terminal::render(&describe()));
+    }
+    match render::json::render_bare(command, result) {
+        Ok(text) => Answer::fine(text + "\n"),
+        Err(error) => Answer {
+            out: String::new(),
+            err: format!("error: the result does not fit into JSON: {error}\n"),
+            status: FAULT,
+        },
+    }
+}
+
 /// Runs the command line of this process.
 pub fn run() -> ExitCode {
     let typed = Typed::parse();
@@ -96,6 +149,11 @@ pub fn run() -> ExitCode {
     };
     let answer = catch_unwind(|| match &typed.command {
         Command::Check(typed) => check::run(typed),
+        Command::Materials(typed) => materials::run(typed),
+        Command::New(typed) => new::run(typed),
+        Command::Schema(_) => schema::run(),
+        Command::Completions(typed) => manual::completions(typed),
+        Command::Manual(typed) => manual::manual(typed),
         Command::Other(words) => other(words),
     });
     let Ok(answer) = answer else {

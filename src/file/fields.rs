@@ -118,6 +118,10 @@ impl<'c, 't> Fields<'c, 't> {
 
     /// The value of a key, wherever it comes from.
     pub fn find(&self, key: &str) -> Option<Found<'t>> {
+        // Parts of several kinds share readers; a key that one of them lacks is refused elsewhere.
+        if !self.keys.is_empty() && holds(self.keys, key).is_none() {
+            return None;
+        }
         if let Some(set) = self.context.overridden(&self.address(key)) {
             return Some(Found {
                 raw: Raw::Text(set.text.clone(), Some(0)),

@@ -7,7 +7,7 @@
 use serde_json::{Map, Value, json};
 
 use super::MOST_PARTS;
-use super::keys::{GENERAL, Holds, KINDS, Key, TOP};
+use super::keys::{GENERAL, Holds, KINDS, Key, PartKind, TOP};
 use crate::quantity::{Kind, LONGEST};
 
 /// The schema, as data.
@@ -26,11 +26,20 @@ pub fn schema() -> Value {
     }
     let kinds = KINDS.map(|kind| reference(kind.name));
     definitions.insert("part".into(), json!({ "oneOf": kinds }));
+    let needs = KINDS.map(needs);
+    definitions.insert("whole_part".into(), json!({ "allOf": needs }));
 
     let mut schema = table(&TOP);
     schema["$schema"] = "https://json-schema.org/draft/2020-12/schema".into();
     schema["title"] = "A cavity file of modewright".into();
     schema["required"] = json!(["wavelength", "form", "path"]);
+    // Defaults and ties may give what a part leaves out.
+    schema["if"] = json!({
+        "not": { "anyOf": [{ "required": ["defaults"] }, { "required": ["ties"] }] },
+    });
+    schema["then"] = json!({
+        "properties": { "path": { "items": reference("whole_part") } },
+    });
     schema["$defs"] = Value::Object(definitions);
     schema
 }
@@ -110,6 +119,22 @@ fn value(holds: Holds) -> Value {
         }),
         Holds::Anything => json!({ "type": "array", "items": { "type": "object" } }),
     }
+}
+
+/// What a part must say if it is of this kind.
+fn needs(kind: PartKind) -> Value {
+    let wanted: Vec<Value> = kind
+        .needs
+        .iter()
+        .map(|ways| {
+            let ways: Vec<Value> = ways
+                .iter()
+                .map(|keys| json!({ "required": keys }))
+                .collect();
+            json!({ "anyOf": ways })
+        })
+        .collect();
+    json!({ "if": { "required": [kind.name] }, "then": { "allOf": wanted } })
 }
 
 fn reference(definition: &str) -> Value {
@@ -212,5 +237,85 @@ fn name(kind: Kind) -> &'static str {
         Kind::Temperature => "temperature",
         Kind::PerWatt => "per_watt",
         Kind::Damage => "damage",
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::quantity::parse;
+
+    #[test]
+    fn no_quantity_that_is_read_is_refused() {
+        let numbers = [
+            "100",
+            ".5",
+            "1e-3",
+            "1/2",
+            "1 1/2",
+            "-75",
+            "+3",
+            "> 99.9",
+            "１００",
+            "0",
+        ];
+        let spreads = ["", " ± 1 %", " +0.2/-0.5", " ± 0.5 mm", " ± 1 K", "(5)"];
+        let senses = ["", " convex"];
+        let mut read = 0;
+        for kind in Kind::ALL {
+            let validator = jsonschema::draft202012::new(&quantity(kind)).unwrap();
+            let mut texts: Vec<String> = ["flat", " flat ± 0.003 1/m", "brewster", "0 ± 50 urad"]
+                .map(String::from)
+                .to_vec();
+            for unit in kind.units().flat_map(|unit| unit.names()) {
+                let unit = unit.replace('\u{b5}', "\u{3bc}");
+                for number in numbers {
+                    for space in ["", " ", "\u{a0}"] {
+                        texts.push(format!("{number}(5){space}{unit}"));
+                        for spread in spreads {
+                            for sense in senses {
+                                texts.push(format!("{number}{space}{unit}{spread}{sense}"));
+                            }
+                        }
+                    }
+                }
+            }
+            for text in texts {
+                if parse(&text, kind).is_ok() {
+                    read += 1;
+                    assert!(validator.is_valid(&text.clone().into()), "{kind:?}: {text}");
+                }
+            }
+        }
+        assert!(read > 1000, "{read}");
+    }
+
+    #[test]
+    fn what_the_schema_asks_of_a_part_the_reader_asks_too() {
+        let validator = jsonschema::draft202012::new(&schema()).unwrap();
+        for kind in KINDS {
+            let part = format!("{} = \"P\"", kind.name);
+            let file = format!("wavelength = \"1 um\"\nform = \"standing\"\npath = [{{ {part} }}]");
+            let data: Value = toml::from_str(&file).unwrap();
+            assert!(!validator.is_valid(&data), "{file}");
+            let said: Vec<String> = super::super::load("file", &file, &[])
+                .unwrap_err()
+                .diagnostics
+                .iter()
+                .flat_map(|found| {
+                    [
+                        found.message.clone(),
+                        found.help.clone().unwrap_or_default(),
+                    ]
+                })
+                .collect();
+            for ways in kind.needs {
+                let is_asked = |key: &&str| said.iter().any(|text| text.contains(*key));
+                assert!(
+                    ways.iter().flat_map(|keys| keys.iter()).any(is_asked),
+                    "{file}: {said:?}"
+                );
+            }
+        }
     }
 }

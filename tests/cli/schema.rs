@@ -123,6 +123,15 @@ fn broken_files_do_not() {
         assert!(!validator.is_valid(&file), "without {key}");
     }
     let mut file = good.clone();
+    for key in ["ties", "defaults"] {
+        assert!(validator.is_valid(&file));
+        file.as_object_mut().unwrap().remove(key);
+    }
+    assert!(
+        !validator.is_valid(&file),
+        "d2 has no length, and no tie gives it one"
+    );
+    let mut file = good.clone();
     file["lambda"] = json!("1064 nm");
     assert!(!validator.is_valid(&file));
 }

@@ -97,6 +97,26 @@ mod tests {
     }
 
     #[test]
+    fn a_key_of_another_kind_of_part_is_refused_wherever_it_stands() {
+        let file = |extra: &str, lens: &str| {
+            format!(
+                "wavelength = \"1 um\"\nform = \"ring\"\n{extra}\npath = [{{ mirror = \"M1\", \
+                 roc = \"1 m\" }}, {{ lens = \"L1\", focal = \"1 m\"{lens} }}]"
+            )
+        };
+        let width = ["L1.width=5 mm".to_string()];
+        for (text, set) in [
+            (file("", ", width = \"5 mm\", height = \"5 mm\""), &[][..]),
+            (file("defaults = { lens = { width = \"5 mm\" } }", ""), &[]),
+            (file("", ""), &width),
+        ] {
+            let refused = crate::file::load("file", &text, set).unwrap_err();
+            let said = &refused.diagnostics[0].message;
+            assert!(said.contains("width"), "{said}");
+        }
+    }
+
+    #[test]
     fn a_general_tolerance_is_of_a_key_that_some_part_has() {
         for (name, kind) in GENERAL {
             let found = KINDS

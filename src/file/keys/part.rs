@@ -11,6 +11,8 @@ pub(in crate::file) struct PartKind {
     pub name: &'static str,
     pub says: &'static str,
     pub keys: &'static [Key],
+    /// What it cannot do without: one of several ways of saying it, each by some keys.
+    pub needs: &'static [&'static [&'static [&'static str]]],
 }
 
 /// To which side a beam turns or moves.
@@ -30,36 +32,47 @@ pub(in crate::file) const KINDS: [PartKind; 7] = [
         name: "mirror",
         says: "A mirror",
         keys: &MIRROR,
+        needs: &[&[&["roc"], &["roc_tangential", "roc_sagittal"]]],
     },
     PartKind {
         name: "gap",
         says: "Free space, or a medium between two parts",
         keys: &GAP,
+        needs: &[&[&["length"]]],
     },
     PartKind {
         name: "lens",
         says: "A thin lens",
         keys: &LENS,
+        needs: &[&[&["focal"], &["focal_tangential", "focal_sagittal"]]],
     },
     PartKind {
         name: "slab",
         says: "A plate, rod or crystal",
         keys: &SLAB,
+        needs: &[&[&["thickness"]], &[&["material"], &["index"]]],
     },
     PartKind {
         name: "duct",
         says: "A medium whose index falls or rises as the square of the distance from the axis",
         keys: &DUCT,
+        needs: &[
+            &[&["length"]],
+            &[&["index"]],
+            &[&["strength"], &["strength_tangential", "strength_sagittal"]],
+        ],
     },
     PartKind {
         name: "aperture",
         says: "A round hole or a slit",
         keys: &APERTURE,
+        needs: &[&[&["radius"], &["half_width", "plane"]]],
     },
     PartKind {
         name: "matrix",
         says: "Anything else, by its ray matrices",
         keys: &MATRIX,
+        needs: &[&[&["tangential"]], &[&["sagittal"]]],
     },
 ];
 

@@ -224,7 +224,7 @@ fn read_file<'t>(
             .collect::<Vec<_>>()
     })?;
     plain::check_input(&fields, &cavity);
-    if fields.word("polarisation", &["s", "p"]) == Some(1) {
+    if fields.word("polarisation", &keys::POLARISATIONS) == Some(1) {
         cavity.polarisation = Polarisation::P;
     }
     let order = fields

@@ -9,5 +9,6 @@ pub mod leaving;
 pub mod lengths;
 pub mod materials;
 pub mod measures;
+pub mod profile;
 pub mod ranges;
 pub mod spectrum;

@@ -2,8 +2,10 @@
 
 use clap::Args;
 
+use super::picture::Target;
 use super::{Answer, CavityFile, FAULT, FINE, NO, input};
 use crate::analysis;
+use crate::analysis::profile::Profile;
 use crate::report::{describe, render};
 
 #[derive(Args)]
@@ -20,14 +22,26 @@ pub(super) struct Typed {
     /// Print the verdict only
     #[arg(long, conflicts_with = "json")]
     quiet: bool,
+    /// Draw the beam along the path, as .svg or .png by the ending of the name
+    #[arg(long, value_name = "PATH")]
+    plot: Option<std::path::PathBuf>,
 }
 
 pub(super) fn run(typed: &Typed) -> Answer {
-    let loaded = match input::load(&typed.cavity) {
-        Ok(loaded) => loaded,
-        Err(answer) => return answer,
-    };
+    match answer(typed) {
+        Ok(answer) | Err(answer) => answer,
+    }
+}
+
+fn answer(typed: &Typed) -> Result<Answer, Answer> {
+    let target = typed.plot.as_deref().map(Target::of).transpose()?;
+    let loaded = input::load(&typed.cavity)?;
     let check = analysis::check::check(&loaded.cavity);
+    if let Some(target) = target {
+        let cavity = &loaded.cavity;
+        let profile = Profile::of(cavity, &cavity.book().nominal());
+        target.write(&describe::envelope(&check, &profile))?;
+    }
     let good = check.stable && check.limits.iter().all(|limit| limit.holds);
     let status = if good { FINE } else { NO };
     let name = typed.cavity.file.display().to_string();
@@ -35,11 +49,11 @@ pub(super) fn run(typed: &Typed) -> Answer {
         match render::json::render("check", &name, &check) {
             Ok(json) => json + "\n",
             Err(error) => {
-                return Answer {
+                return Err(Answer {
                     out: String::new(),
                     err: format!("error: the result does not fit into JSON: {error}\n"),
                     status: FAULT,
-                };
+                });
             }
         }
     } else {
@@ -49,9 +63,9 @@ pub(super) fn run(typed: &Typed) -> Answer {
         }
         render::terminal::render(&document)
     };
-    Answer {
+    Ok(Answer {
         out,
         err: String::new(),
         status,
-    }
+    })
 }

@@ -8,6 +8,7 @@ mod input;
 mod manual;
 mod materials;
 mod new;
+mod picture;
 mod schema;
 
 use std::ffi::OsString;

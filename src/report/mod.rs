@@ -3,5 +3,6 @@
 
 pub mod describe;
 pub mod document;
+pub mod figure;
 pub mod number;
 pub mod render;

@@ -1,6 +1,11 @@
 //! One file per result: which of its figures a reader needs, in which order and units.
 
 mod check;
+mod envelope;
 pub mod materials;
+mod sections;
+mod verdict;
+mod waists;
 
 pub use check::describe as check;
+pub use envelope::describe as envelope;

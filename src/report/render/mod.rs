@@ -2,4 +2,5 @@
 
 pub mod diagnostics;
 pub mod json;
+pub mod plot;
 pub mod terminal;

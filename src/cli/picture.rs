@@ -1,0 +1,112 @@
+//! Writing a picture to disk: whole or not at all.
+
+use std::io::Write;
+use std::path::{Path, PathBuf};
+
+use super::{Answer, FAULT, WRONG_INPUT};
+use crate::report::figure::Figure;
+use crate::report::render::plot;
+
+/// Where a picture goes and what it is, by the ending of its name.
+#[derive(Clone, Debug)]
+pub(super) struct Target {
+    path: PathBuf,
+    format: Format,
+}
+
+#[derive(Clone, Copy, Debug)]
+enum Format {
+    Svg,
+    #[cfg(feature = "png")]
+    Png,
+}
+
+impl Target {
+    /// Judges the typed path before anything is computed.
+    pub(super) fn of(path: &Path) -> Result<Target, Answer> {
+        let ending = path
+            .extension()
+            .map(|ending| ending.to_string_lossy().to_ascii_lowercase());
+        let format = match ending.as_deref() {
+            Some("svg") => Format::Svg,
+            #[cfg(feature = "png")]
+            Some("png") => Format::Png,
+            #[cfg(not(feature = "png"))]
+            Some("png") => {
+                return Err(refuse(
+                    path,
+                    "this build writes no .png pictures; name an .svg file",
+                ));
+            }
+            _ => {
+                return Err(refuse(
+                    path,
+                    "a picture's name ends in .svg or .png, and so says what it is",
+                ));
+            }
+        };
+        Ok(Target {
+            path: path.into(),
+            format,
+        })
+    }
+
+    /// Paints the figure and writes it.
+    pub(super) fn write(&self, figure: &Figure) -> Result<(), Answer> {
+        let painted = match self.format {
+            Format::Svg => plot::svg(figure).map(String::into_bytes),
+            #[cfg(feature = "png")]
+            Format::Png => plot::png(figure),
+        };
+        let bytes = painted.map_err(|error| Answer {
+            out: String::new(),
+            err: format!("error: the picture cannot be painted: {error}\n"),
+            status: FAULT,
+        })?;
+        self.put(&bytes)
+            .map_err(|error| refuse(&self.path, &error.to_string()))
+    }
+
+    /// Writes beside the target and renames, so that a reader never meets half a picture.
+    fn put(&self, bytes: &[u8]) -> std::io::Result<()> {
+        if self.path.is_dir() {
+            return Err(std::io::Error::other("this is a folder"));
+        }
+        let folder = match self.path.parent() {
+            Some(folder) if folder != Path::new("") => folder,
+            _ => Path::new("."),
+        };
+        let mut builder = tempfile::Builder::new();
+        builder.prefix(".modewright-");
+        #[cfg(unix)]
+        {
+            // As any other file: the user's mask decides, instead of "for nobody else".
+            use std::os::unix::fs::PermissionsExt;
+            builder.permissions(std::fs::Permissions::from_mode(0o666));
+        }
+        let mut file = builder
+            .tempfile_in(folder)
+            .map_err(|error| error_kind(&error))?;
+        file.write_all(bytes)?;
+        file.flush()?;
+        file.persist(&self.path)
+            .map_err(|error| error_kind(&error.error))?;
+        Ok(())
+    }
+}
+
+/// The error in words that do not speak of the temporary file.
+fn error_kind(error: &std::io::Error) -> std::io::Error {
+    std::io::Error::other(error.kind().to_string())
+}
+
+fn refuse(path: &Path, why: &str) -> Answer {
+    Answer {
+        out: String::new(),
+        err: format!(
+            "error: cannot write the picture {}: {why}\n",
+            path.display().to_string().escape_debug()
+        ),
+        status: WRONG_INPUT,
+    }
+}

@@ -1,0 +1,79 @@
+//! Where a label can stand without hiding anything.
+
+use super::scene::Rect;
+
+/// What is already in the way.
+#[derive(Clone, Debug, Default)]
+pub(super) struct Occupied {
+    /// Labels.
+    boxes: Vec<Rect>,
+    /// Lines from labels to what they name.
+    leaders: Vec<[[f64; 2]; 2]>,
+    /// Curves, each from point to point.
+    curves: Vec<Vec<[f64; 2]>>,
+}
+
+/// A possible place of a label.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Candidate {
+    /// The place.
+    pub area: Rect,
+    /// The line to what it names, where one is needed.
+    pub leader: Option<[[f64; 2]; 2]>,
+}
+
+impl Occupied {
+    pub(super) fn add_curve(&mut self, points: Vec<[f64; 2]>) {
+        self.curves.push(points);
+    }
+
+    pub(super) fn add_box(&mut self, area: Rect) {
+        self.boxes.push(area);
+    }
+
+    /// Whether a label could stand there, curves aside.
+    fn is_free(&self, candidate: &Candidate) -> bool {
+        let area = candidate.area.grown(1.5);
+        !self.boxes.iter().any(|other| area.overlaps(*other))
+            && !self.leaders.iter().any(|[a, b]| area.meets(*a, *b))
+            && candidate
+                .leader
+                .is_none_or(|[a, b]| !self.boxes.iter().any(|other| other.meets(a, b)))
+    }
+
+    /// How many pieces of curves a label would cover.
+    fn covered(&self, area: Rect) -> usize {
+        let area = area.grown(2.0);
+        self.curves
+            .iter()
+            .flat_map(|points| points.windows(2))
+            .filter(|pair| area.meets(pair[0], pair[1]))
+            .count()
+    }
+
+    /// Takes the first place that hides nothing, else the one that hides the least of a curve;
+    /// none where every place is taken.
+    pub(super) fn take(
+        &mut self,
+        within: Rect,
+        candidates: impl IntoIterator<Item = Candidate>,
+    ) -> Option<Candidate> {
+        let mut best: Option<(usize, Candidate)> = None;
+        for candidate in candidates {
+            if !within.contains(candidate.area) || !self.is_free(&candidate) {
+                continue;
+            }
+            let covered = self.covered(candidate.area);
+            if best.is_none_or(|(least, _)| covered < least) {
+                best = Some((covered, candidate));
+            }
+            if covered == 0 {
+                break;
+            }
+        }
+        let (_, chosen) = best?;
+        self.boxes.push(chosen.area);
+        self.leaders.extend(chosen.leader);
+        Some(chosen)
+    }
+}

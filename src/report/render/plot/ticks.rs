@@ -1,0 +1,115 @@
+//! Which numbers stand at an axis.
+
+use crate::report::figure::{Axis, Ticks};
+use crate::report::number::{Scale, fixed, significant};
+
+/// A number at an axis: where, and what is written.
+pub(super) type Tick = (f64, String);
+
+/// Decades up to which the numbers between them are written too.
+const FEW_DECADES: f64 = 3.0;
+
+/// The numbers at an axis, about as many as asked for.
+pub(super) fn ticks(axis: &Axis, about: f64) -> Vec<Tick> {
+    match axis.ticks {
+        Ticks::Even(unit) => even(axis, unit, about),
+        Ticks::Decades(units) => decades(axis, units),
+    }
+}
+
+/// Where a value lies on an axis, from 0 to 1.
+pub(super) fn share(axis: &Axis, value: f64) -> f64 {
+    match axis.ticks {
+        Ticks::Even(_) => (value - axis.from) / (axis.to - axis.from),
+        Ticks::Decades(_) => (value / axis.from).ln() / (axis.to / axis.from).ln(),
+    }
+}
+
+fn even(axis: &Axis, unit: Scale, about: f64) -> Vec<Tick> {
+    let (from, to) = (
+        (axis.from - axis.origin) / unit.size,
+        (axis.to - axis.origin) / unit.size,
+    );
+    let rough = (to - from) / about.max(1.0);
+    if !(rough > 0.0 && rough.is_finite()) {
+        return Vec::new();
+    }
+    let decade = 10_f64.powf(rough.log10().floor());
+    let step = [1.0, 2.0, 5.0, 10.0]
+        .into_iter()
+        .map(|digit| digit * decade)
+        .find(|step| *step >= rough * 0.999)
+        .unwrap_or(10.0 * decade);
+    let decimals = (-step.log10().floor()).clamp(0.0, 12.0) as usize;
+    let slack = 1e-6 * step;
+    let first = ((from - slack) / step).ceil() as i64;
+    let last = ((to + slack) / step).floor() as i64;
+    (first..=last)
+        .map(|count| {
+            let value = count as f64 * step;
+            (axis.origin + value * unit.size, fixed(value, decimals))
+        })
+        .collect()
+}
+
+fn decades(axis: &Axis, units: &[Scale]) -> Vec<Tick> {
+    let between: &[f64] = if (axis.to / axis.from).log10() <= FEW_DECADES {
+        &[1.0, 2.0, 5.0]
+    } else {
+        &[1.0]
+    };
+    let first = axis.from.log10().floor() as i32;
+    let last = axis.to.log10().ceil() as i32;
+    (first..=last)
+        .flat_map(|power| between.iter().map(move |digit| digit * 10_f64.powi(power)))
+        .filter(|value| (axis.from..=axis.to).contains(value))
+        .map(|value| {
+            let unit = units
+                .iter()
+                .rev()
+                .find(|unit| value >= unit.size * (1.0 - 1e-9))
+                .or(units.first());
+            let text = unit.map_or_else(String::new, |unit| {
+                format!("{} {}", significant(value / unit.size, 1), unit.symbol)
+            });
+            (value, text)
+        })
+        .collect()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::report::number::LENGTHS;
+
+    fn texts(from: f64, to: f64, ticks: Ticks) -> Vec<String> {
+        let axis = Axis {
+            title: String::new(),
+            from,
+            to,
+            origin: 0.0,
+            ticks,
+        };
+        super::ticks(&axis, 5.0).into_iter().map(|t| t.1).collect()
+    }
+
+    #[test]
+    fn round_numbers_in_the_unit_of_the_axis() {
+        let millimetres = LENGTHS[2];
+        let found = texts(0.0, 0.28768, Ticks::Even(millimetres));
+        assert_eq!(found, ["0", "100", "200"]);
+        let found = texts(0.0, 1.1e-3, Ticks::Even(millimetres));
+        assert_eq!(found, ["0.0", "0.5", "1.0"]);
+    }
+
+    #[test]
+    fn decades_carry_their_units() {
+        let found = texts(5e-6, 0.04, Ticks::Decades(&LENGTHS));
+        assert_eq!(found, ["10 µm", "100 µm", "1 mm", "10 mm"]);
+        let found = texts(3e-5, 3e-3, Ticks::Decades(&LENGTHS));
+        assert_eq!(
+            found,
+            ["50 µm", "100 µm", "200 µm", "500 µm", "1 mm", "2 mm"]
+        );
+    }
+}

@@ -5,7 +5,7 @@ use super::labels::{self, Band};
 use super::place::Occupied;
 use super::scene::{Anchor, Ink, Rect, Scene};
 use super::ticks::{share, ticks};
-use super::{curves, text};
+use super::{curves, names, text};
 use crate::report::figure::{Axis, Figure, Panel, Symbol};
 
 const WIDTH: f64 = 1000.0;
@@ -87,13 +87,13 @@ pub(super) fn scene(figure: &Figure) -> Scene {
     }
     band.draw(&mut scene, top);
     curves::draw(&mut scene, &mut occupied, &panels);
-    let unnamed = curves::name(&mut scene, &mut occupied, &panels);
+    let notes = names::write(&mut scene, &mut occupied, &panels);
     frames(&mut scene, &panels);
     let bottom = axes(&mut scene, figure, &panels);
     if figure.y.is_none() {
         nothing_to_draw(&mut scene, figure, area_top);
     }
-    footing(&mut scene, figure, bottom, unnamed);
+    footing(&mut scene, figure, bottom, notes);
     scene
 }
 
@@ -283,15 +283,8 @@ fn nothing_to_draw(scene: &mut Scene, figure: &Figure, area_top: f64) {
     line(&figure.verdict, CAPTION);
 }
 
-fn footing(scene: &mut Scene, figure: &Figure, top: f64, unnamed: usize) {
-    let mut notes = figure.notes.clone();
-    match unnamed {
-        0 => {}
-        1 => notes.push("one waist is marked without its radius, for want of room".into()),
-        n => notes.push(format!(
-            "{n} waists are marked without their radius, for want of room"
-        )),
-    }
+fn footing(scene: &mut Scene, figure: &Figure, top: f64, more: Vec<String>) {
+    let notes = [figure.notes.clone(), more].concat();
     let mut y = top;
     let room = scene.width - LEFT - RIGHT;
     for line in text::wrapped(&notes.join("; "), SMALL, room) {

@@ -7,6 +7,7 @@ mod curves;
 mod glyph;
 mod labels;
 mod layout;
+mod names;
 mod paint;
 mod place;
 #[cfg(feature = "png")]

@@ -1,0 +1,203 @@
+//! What is written at curves and marks: the radii of waists, then the names of the curves.
+
+use super::curves::{DOT, LINE, stroke};
+use super::layout::Placed;
+use super::place::{Candidate, Occupied};
+use super::scene::{Anchor, Ink, Rect, Scene};
+use super::text;
+use crate::report::figure::{Curve, Stroke};
+
+const LABEL: f64 = 12.5;
+const WAIST: f64 = 11.0;
+/// Length of the piece of line before a curve's name.
+const SAMPLE: f64 = 30.0;
+/// Heights at which a waist's radius may stand, from near to far.
+const STEPS: [f64; 11] = [
+    13.0, 20.0, 28.0, 40.0, 54.0, 70.0, 88.0, 108.0, 130.0, 160.0, 200.0,
+];
+
+/// Writes what finds room; gives back notes about what does not.
+pub(super) fn write(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    panels: &[Placed<'_>],
+) -> Vec<String> {
+    for placed in panels {
+        for (_, at) in placed.panel.marks.iter().flat_map(|mark| &mark.places) {
+            let [x, y] = placed.point(*at);
+            let dot = Rect {
+                left: x,
+                right: x,
+                top: y,
+                bottom: y,
+            };
+            occupied.add_box(dot.grown(DOT));
+        }
+    }
+    let mut notes = Vec::new();
+    match write_marks(scene, occupied, panels) {
+        0 => {}
+        1 => notes.push("one waist is marked without its radius, for want of room".into()),
+        n => notes.push(format!(
+            "{n} waists are marked without their radius, for want of room"
+        )),
+    }
+    for curve in write_curves(scene, occupied, panels) {
+        let line = match curve.stroke {
+            Stroke::Solid => "solid",
+            Stroke::Dashed => "dashed",
+        };
+        notes.push(format!("{line} line: {}", curve.label));
+    }
+    notes
+}
+
+/// Gives back how many marks found no room for their label.
+fn write_marks(scene: &mut Scene, occupied: &mut Occupied, panels: &[Placed<'_>]) -> usize {
+    let mut unnamed = 0;
+    for placed in panels {
+        for mark in &placed.panel.marks {
+            let points = mark.places.iter().map(|(_, at)| placed.point(*at));
+            let lowest = points.reduce(|a, b| [0.5 * (a[0] + b[0]), a[1].max(b[1])]);
+            if !lowest.is_some_and(|at| name_mark(scene, occupied, placed, at, &mark.label)) {
+                unnamed += 1;
+            }
+        }
+    }
+    unnamed
+}
+
+/// Gives back the curves that found no room for their name.
+fn write_curves<'a>(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    panels: &[Placed<'a>],
+) -> Vec<&'a Curve> {
+    // The widest panel first: a curve is named once.
+    let mut by_width: Vec<&Placed<'a>> = panels.iter().collect();
+    by_width.sort_by(|a, b| b.panel.share.total_cmp(&a.panel.share));
+    let mut named: Vec<&str> = Vec::new();
+    let mut unnamed: Vec<&Curve> = Vec::new();
+    for placed in by_width {
+        for curve in &placed.panel.curves {
+            if named.contains(&curve.label.as_str()) {
+                continue;
+            }
+            if name_curve(scene, occupied, placed, &curve.label, curve.stroke) {
+                named.push(&curve.label);
+                unnamed.retain(|other| other.label != curve.label);
+            } else if !unnamed.iter().any(|other| other.label == curve.label) {
+                unnamed.push(curve);
+            }
+        }
+    }
+    unnamed
+}
+
+fn name_mark(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    placed: &Placed<'_>,
+    [x, y]: [f64; 2],
+    label: &str,
+) -> bool {
+    let length = text::length(label, WAIST);
+    let half = 0.5 * text::height(WAIST);
+    let candidates = STEPS.into_iter().flat_map(|step| {
+        [1.0, -1.0].into_iter().flat_map(move |down| {
+            [0.0, 0.35, -0.35, 0.6, -0.6].into_iter().map(move |aside| {
+                let (cx, cy) = (x + aside * length, y + down * step);
+                let area = Rect {
+                    left: cx - 0.5 * length,
+                    right: cx + 0.5 * length,
+                    top: cy - half,
+                    bottom: cy + half,
+                };
+                let foot = [x, y + down * (DOT + 1.0)];
+                let head = [cx.clamp(area.left, area.right), cy - down * (half + 2.0)];
+                Candidate {
+                    area,
+                    leader: (step > 25.0).then_some([foot, head]),
+                }
+            })
+        })
+    });
+    let Some(chosen) = occupied.take(placed.area.grown(-2.0), candidates) else {
+        return false;
+    };
+    if let Some(leader) = chosen.leader {
+        scene.line(&leader, Ink::Grey, 0.7);
+    }
+    let middle = 0.5 * (chosen.area.top + chosen.area.bottom);
+    let at = [chosen.area.left, middle];
+    scene.text(at, Anchor::Start, WAIST, Ink::Black, label);
+    true
+}
+
+fn name_curve(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    placed: &Placed<'_>,
+    label: &str,
+    style: Stroke,
+) -> bool {
+    const PLACES: i32 = 40;
+    const STEEP: f64 = 60.0;
+    let points: Vec<[f64; 2]> = placed
+        .panel
+        .curves
+        .iter()
+        .filter(|curve| curve.label == label)
+        .flat_map(|curve| curve.points.iter().map(|point| placed.point(*point)))
+        .collect();
+    let length = SAMPLE + 6.0 + text::length(label, LABEL);
+    let half = 0.5 * text::height(LABEL);
+    let width = placed.area.right - placed.area.left;
+    // From the middle outwards, because the ends are crowded with optics.
+    let mut shares: Vec<f64> = (1..PLACES)
+        .map(|place| f64::from(place) / f64::from(PLACES))
+        .collect();
+    shares.sort_by(|a, b| (a - 0.5).abs().total_cmp(&(b - 0.5).abs()));
+    let up_first = match style {
+        Stroke::Solid => [-1.0, 1.0],
+        Stroke::Dashed => [1.0, -1.0],
+    };
+    let candidates: Vec<Candidate> = [14.0, 18.0, 24.0]
+        .into_iter()
+        .flat_map(|step| up_first.map(|side| (step, side)))
+        .flat_map(|(step, side)| shares.iter().map(move |share| (step, side, *share)))
+        .filter_map(|(step, side, share)| {
+            let x = placed.area.left + share * width;
+            let height = |x: f64| points.iter().find(|p| p[0] >= x).map(|p| p[1]);
+            let (here, before, after) = (
+                height(x)?,
+                height(x - 0.5 * length)?,
+                height(x + 0.5 * length)?,
+            );
+            // Beside a steep curve a name seems to belong to nothing.
+            if (before - here).abs().max((after - here).abs()) > STEEP {
+                return None;
+            }
+            let y = here + side * step;
+            Some(Candidate {
+                area: Rect {
+                    left: x - 0.5 * length,
+                    right: x + 0.5 * length,
+                    top: y - half,
+                    bottom: y + half,
+                },
+                leader: None,
+            })
+        })
+        .collect();
+    let Some(chosen) = occupied.take(placed.area.grown(-2.0), candidates) else {
+        return false;
+    };
+    let area = chosen.area;
+    let y = 0.5 * (area.top + area.bottom);
+    let sample = [[area.left, y], [area.left + SAMPLE, y]];
+    stroke(scene, &sample, style, LINE);
+    let at = [area.left + SAMPLE + 6.0, y];
+    scene.text(at, Anchor::Start, LABEL, Ink::Black, label);
+    true
+}

@@ -1,6 +1,6 @@
 //! Writing a picture to disk: whole or not at all.
 
-use std::io::Write;
+use std::io::{ErrorKind, Write};
 use std::path::{Path, PathBuf};
 
 use super::{Answer, FAULT, WRONG_INPUT};
@@ -84,20 +84,22 @@ impl Target {
             use std::os::unix::fs::PermissionsExt;
             builder.permissions(std::fs::Permissions::from_mode(0o666));
         }
-        let mut file = builder
-            .tempfile_in(folder)
-            .map_err(|error| error_kind(&error))?;
+        let mut file = builder.tempfile_in(folder).map_err(|error| plain(&error))?;
         file.write_all(bytes)?;
         file.flush()?;
         file.persist(&self.path)
-            .map_err(|error| error_kind(&error.error))?;
+            .map_err(|error| plain(&error.error))?;
         Ok(())
     }
 }
 
 /// The error in words that do not speak of the temporary file.
-fn error_kind(error: &std::io::Error) -> std::io::Error {
-    std::io::Error::other(error.kind().to_string())
+fn plain(error: &std::io::Error) -> std::io::Error {
+    std::io::Error::other(match error.kind() {
+        ErrorKind::NotFound => "its folder does not exist".into(),
+        ErrorKind::PermissionDenied => "its folder may not be written to".into(),
+        kind => kind.to_string(),
+    })
 }
 
 fn refuse(path: &Path, why: &str) -> Answer {

@@ -59,7 +59,7 @@ fn what_cannot_be_written_is_refused_and_leaves_nothing() {
     for (path, why) in [
         ("beam.pdf", "ends in .svg or .png"),
         ("beam", "ends in .svg or .png"),
-        ("missing/beam.svg", "not found"),
+        ("missing/beam.svg", "folder does not exist"),
         ("folder.svg", "a folder"),
     ] {
         let output = check(folder.path(), &cavities::two(), &["--plot", path]);

@@ -40,7 +40,10 @@ pub fn describe(check: &Check, profile: &Profile) -> Figure {
     let whole = common([check.round_trip.length_m], &LENGTHS, 1.0);
     let y = radius_axis(profile);
     let radii = match y {
-        Some(_) => "; radii to 1/e² of the intensity, tangential / sagittal where they differ",
+        Some(_) => {
+            "; radii to 1/e² of the intensity, bodies at their middle, tangential / sagittal where \
+             they differ"
+        }
         None => "",
     };
     let mut notes = Vec::new();
@@ -55,6 +58,16 @@ pub fn describe(check: &Check, profile: &Profile) -> Figure {
     } else if y.is_some() {
         notes.push("unfolded; one way is shown, the beam is the same on its way back".into());
     }
+    notes.extend(profile.parts.iter().filter_map(|part| match part.shape {
+        Shape::Aperture {
+            plane: Some(plane), ..
+        } => Some(format!(
+            "{} limits the {} plane only",
+            part.name,
+            plane.name()
+        )),
+        _ => None,
+    }));
     let title = check.title.clone();
     Figure {
         title: title.unwrap_or_else(|| format!("{} cavity", capital(check.form))),

@@ -18,9 +18,10 @@ const MOST: usize = 3;
 const WIDTH: (f64, f64) = (0.6, 0.4);
 /// Least width of what lies between.
 const LEAST_WIDTH: f64 = 0.1;
-/// How much of its surroundings such a panel shows, as a share of its own length, and how much of
-/// a gap it may take for that.
+/// How much of its surroundings such a panel shows, as a share of its own length; from how far it
+/// fetches a focus, likewise; and how much of a gap it may take for that.
 const SURROUNDINGS: f64 = 0.6;
+const REACH: f64 = 6.0;
 const OF_A_GAP: f64 = 0.4;
 
 /// A piece of the path with its own scale.
@@ -84,14 +85,10 @@ fn magnify(profile: &Profile, run: &Range<usize>, share: f64) -> Section {
     let parts = &profile.parts;
     let (first, last) = (&parts[run.start], &parts[run.end - 1]);
     let (from, to) = (first.at_m, last.at_m + last.length_m);
-    let room = |part: Option<&AlongPart>| match part {
-        Some(part) if part.shape == Shape::Gap => {
-            (SURROUNDINGS * (to - from)).min(OF_A_GAP * part.length_m)
-        }
-        _ => 0.0,
-    };
-    let before = room(run.start.checked_sub(1).and_then(|index| parts.get(index)));
-    let after = room(parts.get(run.end));
+    let before = run.start.checked_sub(1).and_then(|index| parts.get(index));
+    let before = before.map_or(0.0, |gap| surroundings(gap, from, to - from));
+    let after = parts.get(run.end);
+    let after = after.map_or(0.0, |gap| surroundings(gap, to, to - from));
     let origin = run
         .clone()
         .find(|index| parts[*index].shape != Shape::Gap)
@@ -103,6 +100,23 @@ fn magnify(profile: &Profile, run: &Range<usize>, share: f64) -> Section {
         origin,
         share,
     }
+}
+
+/// How much of a neighbouring gap is shown beyond the edge of a stretch of the given length.
+fn surroundings(gap: &AlongPart, edge: f64, length: f64) -> f64 {
+    if gap.shape != Shape::Gap {
+        return 0.0;
+    }
+    let focus = Plane::BOTH
+        .into_iter()
+        .filter_map(|plane| {
+            let samples = gap.radii[plane].iter();
+            samples.min_by(|a, b| a.radius_m.total_cmp(&b.radius_m))
+        })
+        .map(|sample| (sample.at_m - edge).abs())
+        .filter(|distance| *distance <= REACH * length)
+        .fold(0.0, f64::max);
+    (focus + SURROUNDINGS * length).min(OF_A_GAP * gap.length_m)
 }
 
 /// Gives the panels of true scale what is left of the width.

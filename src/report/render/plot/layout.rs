@@ -268,7 +268,8 @@ fn axes(scene: &mut Scene, figure: &Figure, panels: &[Placed<'_>]) -> f64 {
 }
 
 fn number_of_ticks(area: Rect) -> f64 {
-    ((area.right - area.left) / 65.0).min(10.0)
+    let width = area.right - area.left;
+    (width / 65.0).min(10_f64.max(width / 130.0))
 }
 
 /// Instead of an empty plot that could be taken for a beam of no size.

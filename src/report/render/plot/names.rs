@@ -162,35 +162,38 @@ fn name_curve(
         Stroke::Solid => [-1.0, 1.0],
         Stroke::Dashed => [1.0, -1.0],
     };
-    let candidates: Vec<Candidate> = [14.0, 18.0, 24.0]
+    let height = |x: f64| points.iter().find(|p| p[0] >= x).map(|p| p[1]);
+    let at = |x: f64, y: f64| Candidate {
+        area: Rect {
+            left: x - 0.5 * length,
+            right: x + 0.5 * length,
+            top: y - half,
+            bottom: y + half,
+        },
+        leader: None,
+    };
+    let mut candidates: Vec<Candidate> = Vec::new();
+    for (step, side) in [14.0, 18.0, 24.0]
         .into_iter()
         .flat_map(|step| up_first.map(|side| (step, side)))
-        .flat_map(|(step, side)| shares.iter().map(move |share| (step, side, *share)))
-        .filter_map(|(step, side, share)| {
+    {
+        candidates.extend(shares.iter().filter_map(|share| {
             let x = placed.area.left + share * width;
-            let height = |x: f64| points.iter().find(|p| p[0] >= x).map(|p| p[1]);
-            let (here, before, after) = (
-                height(x)?,
-                height(x - 0.5 * length)?,
-                height(x + 0.5 * length)?,
-            );
-            // Beside a steep curve a name seems to belong to nothing.
-            if (before - here).abs().max((after - here).abs()) > STEEP {
-                return None;
-            }
-            let y = here + side * step;
-            Some(Candidate {
-                area: Rect {
-                    left: x - 0.5 * length,
-                    right: x + 0.5 * length,
-                    top: y - half,
-                    bottom: y + half,
-                },
-                leader: None,
-            })
-        })
-        .collect();
-    let Some(chosen) = occupied.take(placed.area.grown(-2.0), candidates) else {
+            let ends = [height(x - 0.5 * length)?, height(x + 0.5 * length)?];
+            let here = height(x)?;
+            // Over or under a steep curve a name seems to belong to nothing.
+            let is_steep = ends.iter().any(|end| (end - here).abs() > STEEP);
+            (!is_steep).then(|| at(x, here + side * step))
+        }));
+    }
+    // Beside a steep curve there is room where over and under it there is none.
+    for side in [1.0, -1.0] {
+        candidates.extend(shares.iter().filter_map(|share| {
+            let x = placed.area.left + share * width;
+            Some(at(x + side * (0.5 * length + 10.0), height(x)?))
+        }));
+    }
+    let Some(chosen) = occupied.take_clear(placed.area.grown(-2.0), candidates) else {
         return false;
     };
     let area = chosen.area;

@@ -51,6 +51,26 @@ impl Occupied {
             .count()
     }
 
+    /// Takes the first place that hides nothing; none where there is no such place.
+    pub(super) fn take_clear(
+        &mut self,
+        within: Rect,
+        candidates: impl IntoIterator<Item = Candidate>,
+    ) -> Option<Candidate> {
+        let chosen = candidates.into_iter().find(|candidate| {
+            within.contains(candidate.area)
+                && self.is_free(candidate)
+                && self.covered(candidate.area) == 0
+        })?;
+        Some(self.claim(chosen))
+    }
+
+    fn claim(&mut self, chosen: Candidate) -> Candidate {
+        self.boxes.push(chosen.area);
+        self.leaders.extend(chosen.leader);
+        chosen
+    }
+
     /// Takes the first place that hides nothing, else the one that hides the least of a curve;
     /// none where every place is taken.
     pub(super) fn take(
@@ -72,8 +92,6 @@ impl Occupied {
             }
         }
         let (_, chosen) = best?;
-        self.boxes.push(chosen.area);
-        self.leaders.extend(chosen.leader);
-        Some(chosen)
+        Some(self.claim(chosen))
     }
 }

@@ -9,6 +9,9 @@ pub(super) type Tick = (f64, String);
 /// Decades up to which the numbers between them are written too.
 const FEW_DECADES: f64 = 3.0;
 
+/// How much closer than asked for the numbers may stand for the sake of a round step.
+const CLOSER: f64 = 0.7;
+
 /// The numbers at an axis, about as many as asked for.
 pub(super) fn ticks(axis: &Axis, about: f64) -> Vec<Tick> {
     match axis.ticks {
@@ -38,7 +41,7 @@ fn even(axis: &Axis, unit: Scale, about: f64) -> Vec<Tick> {
     let step = [1.0, 2.0, 5.0, 10.0]
         .into_iter()
         .map(|digit| digit * decade)
-        .find(|step| *step >= rough * 0.999)
+        .find(|step| *step >= CLOSER * rough)
         .unwrap_or(10.0 * decade);
     let decimals = (-step.log10().floor()).clamp(0.0, 12.0) as usize;
     let slack = 1e-6 * step;

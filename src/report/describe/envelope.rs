@@ -41,8 +41,7 @@ pub fn describe(check: &Check, profile: &Profile) -> Figure {
     let y = radius_axis(profile);
     let radii = match y {
         Some(_) => {
-            "; radii to 1/e² of the intensity, bodies at their middle, tangential / sagittal where \
-             they differ"
+            "; radii at 1/e² of the intensity, in bodies at the middle, tangential / sagittal"
         }
         None => "",
     };

@@ -100,9 +100,9 @@ mod tests {
     fn round_numbers_in_the_unit_of_the_axis() {
         let millimetres = LENGTHS[2];
         let found = texts(0.0, 0.28768, Ticks::Even(millimetres));
-        assert_eq!(found, ["0", "100", "200"]);
+        assert_eq!(found, ["0", "50", "100", "150", "200", "250"]);
         let found = texts(0.0, 1.1e-3, Ticks::Even(millimetres));
-        assert_eq!(found, ["0.0", "0.5", "1.0"]);
+        assert_eq!(found, ["0.0", "0.2", "0.4", "0.6", "0.8", "1.0"]);
     }
 
     #[test]

@@ -164,7 +164,7 @@ fn shape(part: &Part, values: &[f64], ends_here: bool) -> Shape {
             }
         }
         Element::Gap { .. } => Shape::Gap,
-        Element::Lens { power } => Shape::Lens(Bend::of(power.map(|slot| slot.of(values)))),
+        Element::Lens { power, .. } => Shape::Lens(Bend::of(power.map(|slot| slot.of(values)))),
         Element::Slab(slab) => Shape::Slab {
             tilted: match slab.incidence {
                 Incidence::Brewster => true,
@@ -200,7 +200,7 @@ fn sampled(inside: &Inside<f64>, plane: Plane, part_at: f64, wavelength: f64) ->
     let mut shares: Vec<f64> = (0..=LEAST_PIECES)
         .map(|piece| f64::from(piece) / f64::from(LEAST_PIECES))
         .collect();
-    if stretch.strength_squared == 0.0 && stretch.length > 0.0 {
+    if stretch.strength_squared.is_none() && stretch.length > 0.0 {
         let waist = beam.distance_to_waist(stretch.index) / stretch.length;
         if waist > 0.0 && waist < 1.0 {
             shares.push(waist);
@@ -208,7 +208,8 @@ fn sampled(inside: &Inside<f64>, plane: Plane, part_at: f64, wavelength: f64) ->
         }
     } else {
         // A period of the beam in a guide is γL = π; a few pieces to each.
-        let z = (stretch.strength_squared * stretch.length * stretch.length).max(0.0);
+        let strength_squared = stretch.strength_squared.unwrap_or(0.0);
+        let z = (strength_squared * stretch.length * stretch.length).max(0.0);
         let periods = (z.sqrt() / std::f64::consts::PI).min(200.0);
         let pieces = LEAST_PIECES * (1 + periods as u32);
         shares = (0..=pieces)

@@ -19,7 +19,8 @@ use crate::quantity::{Kind, Spread};
 /// Everything that `check` knows of a cavity, in SI units.
 #[derive(Clone, Debug, Serialize)]
 pub struct Check {
-    /// The cavity's title.
+    /// The cavity's title; left out where it has none.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub title: Option<String>,
     /// `standing` or `ring`.
     pub form: &'static str,
@@ -143,7 +144,9 @@ pub struct Station {
     pub sagittal: Option<Spot>,
     /// Radii on the surface, tangential and sagittal.
     pub footprint_m: Option<[f64; 2]>,
-    /// Share of a centred beam that misses the opening in this pass.
+    /// Share of a centred beam that misses the opening in this pass; left out where no opening is
+    /// given.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub clip_loss: Option<f64>,
     /// Why a value is missing.
     #[serde(skip_serializing_if = "Option::is_none")]
@@ -259,6 +262,9 @@ pub struct LimitCheck {
     pub limit: crate::cavity::Limit,
 }
 
+/// Why a value is missing where a mode is there.
+const TOO_LARGE: &str = "this value is too large or too small to be computed";
+
 const NO_MODE: &str = "this plane holds no mode";
 
 /// Checks a cavity.
@@ -332,8 +338,11 @@ impl View<'_> {
         let result = &self.mode.planes[plane];
         let m = result.matrix;
         let stable = result.stability == Stability::Stable;
+        let gouy_rad = stable
+            .then_some(self.envelope.gouy_phase[plane])
+            .filter(|phase| phase.is_finite());
         let why = match result.stability {
-            Stability::Stable => None,
+            Stability::Stable => gouy_rad.is_none().then(|| TOO_LARGE.into()),
             Stability::OnEdge => Some(edge_reason(self.cavity, self.values, plane)),
             Stability::Unstable => Some(NO_MODE.into()),
         };
@@ -341,7 +350,7 @@ impl View<'_> {
             stable,
             half_trace: result.half_trace,
             margin: result.margin,
-            gouy_rad: stable.then_some(self.envelope.gouy_phase[plane]),
+            gouy_rad,
             gouy_folded_rad: result.gouy_folded,
             matrix: [[m.a, m.b], [m.c, m.d]],
             why,
@@ -406,10 +415,12 @@ impl View<'_> {
     ) -> Station {
         let index = medium.phase(self.values);
         let spot = |plane: Plane| {
-            self.holds(plane).then(|| Spot {
+            let spot = Spot {
                 spot_m: beam[plane].radius(self.wavelength),
                 curvature_per_m: beam[plane].wavefront_curvature(index),
-            })
+            };
+            let is_finite = spot.spot_m.is_finite() && spot.curvature_per_m.is_finite();
+            (self.holds(plane) && is_finite).then_some(spot)
         };
         let (tangential, sagittal) = (spot(Plane::Tangential), spot(Plane::Sagittal));
         let cosine = self.surface_cosine(part, face);
@@ -418,6 +429,8 @@ impl View<'_> {
             radii[usize::from(part.swapped)] /= cosine;
             radii
         });
+        let footprint = footprint.filter(|radii| radii.iter().all(|radius| radius.is_finite()));
+        let lacks = tangential.is_none() || sagittal.is_none() || footprint.is_none();
         Station {
             part: part.name.clone(),
             kind: part.kind(),
@@ -427,8 +440,10 @@ impl View<'_> {
             tangential,
             sagittal,
             footprint_m: footprint,
-            clip_loss: footprint.and_then(|radii| self.clip_loss(part, radii)),
-            why: self.why(),
+            clip_loss: footprint
+                .and_then(|radii| self.clip_loss(part, radii))
+                .filter(|loss| loss.is_finite()),
+            why: lacks.then(|| self.why().unwrap_or_else(|| TOO_LARGE.into())),
         }
     }
 
@@ -500,18 +515,22 @@ impl View<'_> {
         } else {
             None
         };
-        let known = why.is_none();
         let index = inner_medium(part)
             .unwrap_or(Index::VACUUM)
             .phase(self.values);
         let beam = at.entered[plane];
         let from_start = beam.distance_to_waist(index);
+        let waist = beam.waist_radius(self.wavelength);
+        let rayleigh = beam.rayleigh_length(index);
+        let is_finite = [from_start, waist, rayleigh].iter().all(|x| x.is_finite());
+        let why = why.or_else(|| (!is_finite).then(|| TOO_LARGE.into()));
+        let known = why.is_none();
         Waist {
             part: part.name.clone(),
             plane: plane.name(),
-            waist_m: known.then(|| beam.waist_radius(self.wavelength)),
+            waist_m: known.then_some(waist),
             from_start_m: known.then_some(from_start),
-            rayleigh_m: known.then(|| beam.rayleigh_length(index)),
+            rayleigh_m: known.then_some(rayleigh),
             inside: known.then(|| (0.0..=at.length).contains(&from_start)),
             why,
         }
@@ -557,18 +576,24 @@ impl View<'_> {
             None => part.before.phase(self.values),
         };
         let plane = |plane: Plane| {
-            self.holds(plane).then(|| LeavingPlane {
+            let leaving = LeavingPlane {
                 waist_m: beam[plane].waist_radius(self.wavelength),
                 from_outer_face_m: beam[plane].distance_to_waist(outside),
                 divergence_rad: beam[plane].divergence(self.wavelength, outside),
-            })
+            };
+            let is_finite = leaving.waist_m.is_finite()
+                && leaving.from_outer_face_m.is_finite()
+                && leaving.divergence_rad.is_finite();
+            (self.holds(plane) && is_finite).then_some(leaving)
         };
+        let (tangential, sagittal) = (plane(Plane::Tangential), plane(Plane::Sagittal));
+        let lacks = tangential.is_none() || sagittal.is_none();
         Some(Leaving {
             mirror: part.name.clone(),
             pass,
-            tangential: plane(Plane::Tangential),
-            sagittal: plane(Plane::Sagittal),
-            why: self.why(),
+            tangential,
+            sagittal,
+            why: lacks.then(|| self.why().unwrap_or_else(|| TOO_LARGE.into())),
         })
     }
 }
@@ -820,13 +845,19 @@ fn limits(cavity: &Cavity, values: &[f64]) -> Vec<LimitCheck> {
         .limits
         .iter()
         .zip(found)
-        .map(|(limit, value)| LimitCheck {
-            of: limit.name.clone(),
-            value,
-            holds: value.is_some_and(|value| limit.bounds.hold(value)),
-            wanted: limit.bounds.to_string(),
-            why: value.is_none().then(|| no_value(limit.measure).into()),
-            limit: limit.clone(),
+        .map(|(limit, found)| {
+            let value = found.filter(|value| value.is_finite());
+            LimitCheck {
+                of: limit.name.clone(),
+                value,
+                holds: value.is_some_and(|value| limit.bounds.hold(value)),
+                wanted: limit.bounds.to_string(),
+                why: value.is_none().then(|| match found {
+                    Some(_) => TOO_LARGE.into(),
+                    None => no_value(limit.measure).into(),
+                }),
+                limit: limit.clone(),
+            }
         })
         .collect()
 }

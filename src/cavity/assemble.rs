@@ -104,9 +104,30 @@ impl Cavity {
                 help: "put a gap between the mirrors: { gap = \"d1\", length = \"100 mm\" }".into(),
             }]);
         }
+        let way = cavity.one_way(&values);
+        let fits = Plane::BOTH.into_iter().all(|plane| {
+            let m = way[plane];
+            [m.a, m.b, m.c, m.d]
+                .iter()
+                .all(|entry| entry.abs() <= GREATEST_ENTRY)
+        });
+        if !fits {
+            return Err(vec![Fault {
+                part: None,
+                key: None,
+                message: "a ray through this path grows beyond all numbers".into(),
+                help: "check the digits and units of the lengths, radii and powers; an entry of \
+                       the path's ray matrix exceeds 1e60"
+                    .into(),
+            }]);
+        }
         Ok(cavity)
     }
 }
+
+/// Greatest entry of a path's ray matrix: its fourth power, which the mode is made of, must still
+/// be a number.
+const GREATEST_ENTRY: f64 = 1e60;
 
 fn check_ends(form: Form, parts: &[Part], faults: &mut Vec<Fault>) {
     let mut fault = |part, message: &str, help: &str| {

@@ -2,12 +2,14 @@
 //! entered so far, and what the command line sets differently.
 
 use std::cell::{Cell, RefCell};
-use std::collections::HashMap;
+use std::collections::{HashMap, HashSet};
 use std::ops::Range;
 
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
+use super::parts::knows;
+use super::reach::beyond;
 use crate::cavity::Book;
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
 use crate::quantity::{self, General, Kind, Quantity, Spread, Value};
@@ -49,16 +51,19 @@ pub(super) struct Context<'t> {
     /// Where each address was written.
     pub places: RefCell<HashMap<String, Place>>,
     /// Addresses that follow others.
-    pub tied: Vec<String>,
+    pub tied: HashSet<String>,
+    /// Kinds of the parts read so far, by their names.
+    pub kinds: RefCell<HashMap<String, &'static str>>,
     /// General tolerances by key.
     pub general: RefCell<HashMap<String, General>>,
 }
 
 impl<'t> Context<'t> {
     pub fn report(&self, place: Option<Place>, message: impl Into<String>, help: &str) {
+        let message = message.into();
         self.diagnostics.borrow_mut().push(Diagnostic {
             severity: Severity::Error,
-            message: message.into(),
+            message,
             place,
             label: String::new(),
             help: (!help.is_empty()).then(|| help.to_string()),
@@ -71,7 +76,17 @@ impl<'t> Context<'t> {
 
     /// Whether a tie gives the number at this address.
     pub fn is_tied(&self, address: &str) -> bool {
-        self.tied.iter().any(|tied| tied == address)
+        self.tied.contains(address)
+    }
+
+    /// Whether an address may be missing only because its part was refused.
+    pub fn may_exist(&self, address: &str) -> bool {
+        let Some((part, key)) = address.split_once('.') else {
+            return false;
+        };
+        let kinds = self.kinds.borrow();
+        let known = kinds.get(part).is_some_and(|kind| knows(kind, key));
+        known && !self.diagnostics.borrow().is_empty()
     }
 
     /// What the command line says of an address.
@@ -120,14 +135,28 @@ impl<'t> Context<'t> {
             Raw::Other(value) => {
                 self.report(
                     Some(found.place.clone()),
-                    format!("`{key}` must be a quantity, and this is {}", kind_of(value)),
-                    &format!("write it like {key} = \"{}\"", kind.example()),
+                    format!(
+                        "`{key}` is {}, and this is {}",
+                        kind.phrase(),
+                        kind_of(value)
+                    ),
+                    &format!("write it like {key} = {}", example(key, kind)),
                 );
                 return None;
             }
         };
         match result {
-            Ok(quantity) => Some(quantity),
+            Ok(quantity) => {
+                if let Some(range) = beyond(quantity.value, kind) {
+                    self.report(
+                        Some(found.place.clone()),
+                        format!("{} here lies {range}", kind.phrase()),
+                        "check its digits and its unit",
+                    );
+                    return None;
+                }
+                Some(quantity)
+            }
             Err(error) => {
                 let place = match offset {
                     Some(offset) if !error.span.is_empty() => {
@@ -139,10 +168,18 @@ impl<'t> Context<'t> {
                     }
                     _ => found.place.clone(),
                 };
+                let usual = format!("write it like \"{}\"", kind.example());
+                let help = match &error.bare {
+                    Some(number) => Some(with_unit(number, key, kind)),
+                    None if error.help.as_deref() == Some(&usual) => {
+                        Some(format!("write it like {}", example(key, kind)))
+                    }
+                    None => error.help.clone(),
+                };
                 self.report(
                     Some(place),
-                    format!("`{key}`: {}", error.message),
-                    error.help.as_deref().unwrap_or(""),
+                    error.about(&format!("`{key}`"), kind),
+                    help.as_deref().unwrap_or(""),
                 );
                 None
             }
@@ -175,14 +212,65 @@ impl<'t> Context<'t> {
                     "the general tolerance does not fit `{key}`: {}",
                     error.message
                 ),
-                error
-                    .help
-                    .as_deref()
-                    .unwrap_or("give it a tolerance of its own"),
+                "give it a tolerance of its own",
             );
             Spread::Exact
         })
     }
+}
+
+/// A well-written value of a key, as it stands in a file.
+pub(super) fn example(key: &str, kind: Kind) -> String {
+    let text = match (key, kind) {
+        ("wavelength", _) => "1064 nm",
+        ("above" | "below" | "between" | "waist" | "spot", Kind::Length) => "150 um",
+        ("clear", _) => "90 %",
+        ("thickness", _) => "5 mm",
+        ("diameter" | "width" | "height", _) => "12.7 mm",
+        ("radius" | "half_width", _) => "1 mm",
+        (_, Kind::Number) => return kind.example().into(),
+        _ => kind.example(),
+    };
+    format!("\"{text}\"")
+}
+
+/// What to write where a number has no unit.
+fn with_unit(number: &str, key: &str, kind: Kind) -> String {
+    let unit = match (key, kind) {
+        ("wavelength", _) => "nm",
+        ("above" | "below" | "between", Kind::Length) => "um",
+        (key, Kind::Length) if key.starts_with("waist") => "um",
+        ("spot" | "mode_field", _) => "um",
+        (_, Kind::Frequency) => "Hz",
+        (_, Kind::Face) => "mm convex",
+        _ => kind.example().split_once(' ').map_or("", |(_, unit)| unit),
+    };
+    let unit = if kind == Kind::Radius { "mm" } else { unit };
+    format!("write its unit too, as in \"{} {unit}\"", shown(number))
+}
+
+/// Someone's word as it may stand in a message: short, on one line, and harmless to a terminal.
+pub(super) fn shown(word: &str) -> String {
+    const MOST: usize = 40;
+    let mut text: String = word
+        .chars()
+        .take(MOST)
+        .map(|c| if c.is_control() { '\u{fffd}' } else { c })
+        .collect();
+    if word.chars().nth(MOST).is_some() {
+        text.push('…');
+    }
+    text
+}
+
+/// A kind of part with its article.
+pub(super) fn with_article(kind: &str) -> String {
+    let article = if kind.starts_with(['a', 'e', 'i', 'o', 'u']) {
+        "an"
+    } else {
+        "a"
+    };
+    format!("{article} {kind}")
 }
 
 /// What a TOML value is, in words.

@@ -1,11 +1,12 @@
 //! The fields of one table of a file, read by key: from the command line where it says something
 //! of that address, from the table, or from the defaults for its kind.
 
+use std::cell::RefCell;
 use std::ops::Range;
 
 use toml::de::{DeTable, DeValue};
 
-use super::context::{Context, Found, Raw, in_order, kind_of, nearest};
+use super::context::{Context, Found, Raw, example, in_order, kind_of, nearest, shown};
 use super::keys::{Holds, Key, holds, names};
 use crate::cavity::{Entry, Origin, Slot};
 use crate::diagnostic::Place;
@@ -47,6 +48,8 @@ pub(super) struct Fields<'c, 't> {
     defaults: Option<&'t DeTable<'t>>,
     /// What it may hold.
     keys: &'static [Key],
+    /// Keys that unknown ones seem to stand for: their lack is told already.
+    meant: RefCell<Vec<String>>,
 }
 
 impl<'c, 't> Fields<'c, 't> {
@@ -59,6 +62,7 @@ impl<'c, 't> Fields<'c, 't> {
             part: None,
             defaults: None,
             keys: &[],
+            meant: RefCell::default(),
         }
     }
 
@@ -97,15 +101,21 @@ impl<'c, 't> Fields<'c, 't> {
             if known.contains(&key) {
                 continue;
             }
-            let help = advice(key).map(str::to_string).unwrap_or_else(|| {
-                match nearest(key, known.iter().copied()) {
-                    Some(near) => format!("did you mean `{near}`?"),
-                    None => format!("known here: {}", known.join(", ")),
-                }
-            });
+            let near = nearest(key, known.iter().copied());
+            let help = match (advice(key), near) {
+                (Some(advice), _) => advice.to_string(),
+                (None, Some(near)) => format!("did you mean `{near}`?"),
+                (None, None) => format!("known here: {}", known.join(", ")),
+            };
+            let named_in_help = known
+                .iter()
+                .filter(|key| help.contains(&format!("`{key}`")));
+            self.meant
+                .borrow_mut()
+                .extend(named_in_help.map(|key| key.to_string()));
             self.report(
                 Some(self.context.place(span)),
-                format!("{what} has no key `{key}`"),
+                format!("{what} has no key `{}`", shown(key)),
                 &help,
             );
         }
@@ -160,11 +170,30 @@ impl<'c, 't> Fields<'c, 't> {
 
     /// Reports a key that must be there.
     pub fn missing(&self, key: &str, what: &str) {
-        self.report(
+        let help = match key {
+            "roc" => "add roc = \"100 mm\", \"100 mm convex\" or \"flat\"".to_string(),
+            "index" if what == "a slab" => {
+                "add index = 1.45, or material = \"fused silica\"".to_string()
+            }
+            _ => format!("add {key} = {}", example(key, self.kind(key))),
+        };
+        self.must_have(
+            &[key],
             Some(self.place.clone()),
             format!("{what} needs `{key}`"),
-            &format!("add {key} = \"{}\"", self.kind(key).example()),
+            &help,
         );
+    }
+
+    /// Reports the lack of one of some keys, unless another key was meant to be it.
+    pub fn must_have(&self, keys: &[&str], place: Option<Place>, message: String, help: &str) {
+        let meant = self.meant.borrow();
+        if !keys
+            .iter()
+            .any(|key| meant.iter().any(|known| known == key))
+        {
+            self.report(place, message, help);
+        }
     }
 
     /// A quantity, without entering it anywhere.
@@ -224,19 +253,19 @@ impl<'c, 't> Fields<'c, 't> {
         let found = self.find(key)?;
         match found.raw {
             Raw::Text(text, _) => Some((text, found.place)),
-            Raw::Number(_) => {
+            Raw::Number(number) => {
                 self.report(
                     Some(found.place),
-                    format!("`{key}` must be a text in quotes"),
-                    "",
+                    format!("`{key}` is a text, and this is a number"),
+                    &format!("write {key} = \"{number}\", in quotes"),
                 );
                 None
             }
             Raw::Other(value) => {
                 self.report(
                     Some(found.place),
-                    format!("`{key}` must be a text, and this is {}", kind_of(value)),
-                    "",
+                    format!("`{key}` is a text, and this is {}", kind_of(value)),
+                    &format!("write it in quotes, as in {key} = \"…\""),
                 );
                 None
             }
@@ -249,10 +278,14 @@ impl<'c, 't> Fields<'c, 't> {
         let position = words.iter().position(|word| *word == text);
         if position.is_none() {
             let help = match nearest(&text, words.iter().copied()) {
-                Some(near) => format!("did you mean \"{near}\"? {}", one_of(words)),
+                Some(near) => format!("did you mean \"{near}\"?"),
                 None => one_of(words),
             };
-            self.report(Some(place), format!("`{key}` cannot be \"{text}\""), &help);
+            self.report(
+                Some(place),
+                format!("`{key}` cannot be \"{}\"", shown(&text)),
+                &help,
+            );
         }
         position
     }
@@ -265,7 +298,7 @@ impl<'c, 't> Fields<'c, 't> {
             other => {
                 self.report(
                     Some(self.context.place(value.span())),
-                    format!("`{key}` must be a list, and this is {}", kind_of(other)),
+                    format!("`{key}` is a list, and this is {}", kind_of(other)),
                     advice,
                 );
                 None
@@ -281,7 +314,7 @@ impl<'c, 't> Fields<'c, 't> {
             other => {
                 self.report(
                     Some(self.context.place(value.span())),
-                    format!("`{key}` must be a table, and this is {}", kind_of(other)),
+                    format!("`{key}` is a table, and this is {}", kind_of(other)),
                     advice,
                 );
                 None
@@ -292,5 +325,10 @@ impl<'c, 't> Fields<'c, 't> {
 
 fn one_of(words: &[&str]) -> String {
     let quoted: Vec<String> = words.iter().map(|word| format!("\"{word}\"")).collect();
-    format!("one of {}", quoted.join(", "))
+    match quoted.split_last() {
+        Some((last, others)) if !others.is_empty() => {
+            format!("write {} or {last}", others.join(", "))
+        }
+        _ => format!("write {}", quoted.join("")),
+    }
 }

@@ -7,7 +7,8 @@ use super::context::{Context, Raw, kind_of};
 use super::fields::Fields;
 use super::keys::LIMIT;
 use crate::cavity::{Bounds, Cavity, Limit, Measure, Presence};
-use crate::quantity::Kind;
+use crate::diagnostic::Place;
+use crate::quantity::{Kind, Quantity, Spread};
 
 const FORM: &str = "write it like { of = \"M1.spot\", above = \"150 um\" }, with above, below or \
                     between";
@@ -23,7 +24,7 @@ pub(super) fn read_limit<'t>(
         context.report(
             Some(place),
             format!(
-                "a limit must be a table, and this is {}",
+                "a limit is a table, and this is {}",
                 kind_of(value.get_ref())
             ),
             FORM,
@@ -31,12 +32,19 @@ pub(super) fn read_limit<'t>(
         return None;
     };
     let fields = Fields::new(context, table, value.span()).knowing(&LIMIT);
-    fields.refuse_unknown("a limit", |_| None);
+    fields.refuse_unknown("a limit", |key| match key {
+        "min" | "minimum" | "least" | "at_least" => Some("a lower bound is `above`"),
+        "max" | "maximum" | "most" | "at_most" => Some("an upper bound is `below`"),
+        "range" | "within" | "in" => Some("two bounds are `between`"),
+        "measure" | "name" | "quantity" => Some("the measure is named by `of`"),
+        _ => None,
+    });
     let Some((name, place)) = fields.text("of") else {
         if !fields.has("of") {
-            context.report(
+            fields.must_have(
+                &["of"],
                 Some(fields.place.clone()),
-                "a limit needs `of`, its measure",
+                "a limit needs `of`, its measure".into(),
                 FORM,
             );
         }
@@ -87,22 +95,37 @@ pub(super) fn read_order(raw: &Raw<'_>) -> Option<usize> {
     }
 }
 
+/// A bound, which is one number.
+fn exact(fields: &Fields<'_, '_>, bound: Quantity, place: Place) -> Option<f64> {
+    if bound.spread != Spread::Exact {
+        fields.report(
+            Some(place),
+            "a bound has no spread",
+            "write one number, or between = [\"28 um\", \"36 um\"]",
+        );
+        return None;
+    }
+    bound.value.number()
+}
+
 fn read_bounds(fields: &Fields<'_, '_>, kind: Kind) -> Option<Bounds> {
     let given: Vec<&str> = ["above", "below", "between"]
         .into_iter()
         .filter(|key| fields.has(key))
         .collect();
     let [key] = given[..] else {
-        fields.report(
+        fields.must_have(
+            &["above", "below", "between"],
             Some(fields.place.clone()),
-            "a limit has exactly one of `above`, `below` and `between`",
+            "a limit has exactly one of `above`, `below` and `between`".into(),
             FORM,
         );
         return None;
     };
     if key != "between" {
         let found = fields.find(key)?;
-        let value = fields.context.quantity(key, &found, kind)?.value.number()?;
+        let bound = fields.context.quantity(key, &found, kind)?;
+        let value = exact(fields, bound, found.place)?;
         return Some(if key == "above" {
             Bounds::Above(value)
         } else {
@@ -119,11 +142,8 @@ fn read_bounds(fields: &Fields<'_, '_>, kind: Kind) -> Option<Bounds> {
                 fields.report(Some(found.place), "a bound must be a quantity", advice);
                 return None;
             }
-            fields
-                .context
-                .quantity("between", &found, kind)?
-                .value
-                .number()
+            let bound = fields.context.quantity("between", &found, kind)?;
+            exact(fields, bound, found.place)
         })
         .collect();
     match values?[..] {

@@ -1,11 +1,12 @@
 //! What light travels through: a number, or a material of the catalogue.
 
-use super::context::Raw;
+use super::context::{Raw, nearest, shown};
 use super::fields::Fields;
 use super::parts::required;
+use super::reach::GREATEST_INDEX;
 use crate::cavity::{Cavity, Index, Slot};
 use crate::diagnostic::Place;
-use crate::optics::material;
+use crate::optics::material::{self, AxisError};
 use crate::quantity::Kind;
 
 /// The medium of a gap, of a substrate or of the surroundings.
@@ -26,15 +27,15 @@ pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: I
         return ambient;
     };
     match quantity.value.number() {
-        Some(index) if index >= 1.0 => Index::Fixed {
+        Some(index) if (1.0..=GREATEST_INDEX).contains(&index) => Index::Fixed {
             phase: index,
             group: None,
         },
         _ => {
             fields.report(
                 Some(found.place),
-                format!("`{key}` cannot be \"{}\"", quantity.text),
-                "a refractive index is 1 or more",
+                format!("`{key}` cannot be {}", quantity.text),
+                "a refractive index lies between 1 and 100",
             );
             ambient
         }
@@ -83,7 +84,8 @@ fn find_material(
     let material = match material::find(name) {
         Ok(material) => material,
         Err(error) => {
-            let help = match error.nearest.first() {
+            let vacuum = nearest(name, ["vacuum"]);
+            let help = match error.nearest.first().copied().or(vacuum) {
                 Some(near) => format!("did you mean \"{near}\"?"),
                 None => {
                     "write its refractive index as a number; known materials: ".to_string()
@@ -95,7 +97,7 @@ fn find_material(
             };
             fields.report(
                 Some(place),
-                format!("no material is known as \"{name}\""),
+                format!("no material is known as \"{}\"", shown(name)),
                 &help,
             );
             return None;
@@ -105,11 +107,14 @@ fn find_material(
     let axis = match material.axis(axis.as_ref().map(|(name, _)| name.as_str())) {
         Ok(axis) => axis,
         Err(error) => {
-            fields.report(
-                Some(axis_place),
-                error.to_string(),
-                "the axis is the crystal direction along which the light is polarised",
-            );
+            let help = match error {
+                AxisError::Isotropic { .. } => "leave out `axis`",
+                AxisError::Missing { .. } | AxisError::Unknown { .. } => {
+                    "write it like axis = \"e\", the crystal direction along which the light is \
+                     polarised"
+                }
+            };
+            fields.report(Some(axis_place), error.to_string(), help);
             return None;
         }
     };
@@ -121,7 +126,7 @@ fn find_material(
         fields.report(
             Some(place),
             format!("{}: {error}", material.name),
-            "write the index itself, with its source: index = …, group_index = …",
+            "write the index itself in place of the material's name",
         );
         return None;
     }
@@ -136,12 +141,13 @@ pub(super) fn read_index(fields: &Fields<'_, '_>, what: &str) -> Option<Index> {
     let mut good = true;
     for (key, slot) in [("index", Some(phase)), ("group_index", group)] {
         if let Some(slot) = slot
-            && slot.of(&nominal) < 1.0
+            && !(1.0..=GREATEST_INDEX).contains(&slot.of(&nominal))
+            && !fields.context.is_tied(&fields.address(key))
         {
             good = false;
             fields.report(
                 Some(fields.place_of(key)),
-                format!("`{key}` must be 1 or more"),
+                format!("`{key}` lies between 1 and 100"),
                 "a transparent medium slows light down; check the digits",
             );
         }

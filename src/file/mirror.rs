@@ -1,5 +1,6 @@
 //! Mirrors: shape, fold, coating and substrate.
 
+use super::context::shown;
 use super::fields::Fields;
 use super::keys::SIDES;
 use super::medium::read_medium;
@@ -43,7 +44,11 @@ pub(super) fn read_side(fields: &Fields<'_, '_>, key: &str) -> Option<Side> {
     } else {
         "write \"left\", \"right\", \"up\" or \"down\", as a pilot flying along the beam sees it"
     };
-    fields.report(Some(place), format!("`{key}` cannot be \"{text}\""), help);
+    fields.report(
+        Some(place),
+        format!("`{key}` cannot be \"{}\"", shown(&text)),
+        help,
+    );
     None
 }
 
@@ -140,7 +145,7 @@ fn read_substrate(fields: &Fields<'_, '_>) -> Option<Substrate> {
                 fields.report(
                     Some(fields.place_of(key)),
                     format!("`{key}` describes the substrate, and none is named"),
-                    "add substrate = with its refractive index, such as 1.45",
+                    "add substrate = \"fused silica\", or its refractive index",
                 );
             }
         }

@@ -10,13 +10,15 @@ mod medium;
 mod mirror;
 mod parts;
 mod plain;
+mod reach;
 pub mod schema;
 mod slab;
 pub mod starters;
+mod syntax;
 mod ties;
 
 use std::cell::{Cell, RefCell};
-use std::collections::HashMap;
+use std::collections::{HashMap, HashSet};
 use std::ops::Range;
 
 use toml::Spanned;
@@ -26,7 +28,7 @@ use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Polarisation, Slot
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
 use crate::quantity::{self, Kind, QuantityError, Spread};
 pub(crate) use context::nearest;
-use context::{Context, Override, in_order};
+use context::{Context, Override, in_order, shown, with_article};
 use fields::Fields;
 use keys::{FORMS, GENERAL, KINDS, TOP};
 
@@ -108,7 +110,7 @@ fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
     }
     let (table, errors) = DeTable::parse_recoverable(text);
     if !errors.is_empty() {
-        return Err(errors.iter().map(syntax_error).collect());
+        return Err(syntax::slips(text, &errors));
     }
     let context = Context {
         sources,
@@ -116,22 +118,11 @@ fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
         overrides: read_overrides(sources)?,
         book: RefCell::default(),
         places: RefCell::default(),
-        tied: Vec::new(),
+        tied: HashSet::new(),
+        kinds: RefCell::default(),
         general: RefCell::default(),
     };
     read_file(context, &table)
-}
-
-fn syntax_error(error: &toml::de::Error) -> Diagnostic {
-    let message = error.message().replace('\n', "; ");
-    let help = "this is not TOML: a text stands in quotes, a list in [ ], a table in { }";
-    Diagnostic {
-        severity: Severity::Error,
-        message,
-        place: error.span().map(|span| Place { source: 0, span }),
-        label: String::new(),
-        help: Some(help.into()),
-    }
 }
 
 fn read_overrides(sources: &[Source]) -> Result<Vec<Override>, Vec<Diagnostic>> {
@@ -253,9 +244,10 @@ fn read_file<'t>(
 fn enter_globals(fields: &Fields<'_, '_>) {
     let wavelength = fields.slot_or("wavelength", 0.0);
     if !fields.has("wavelength") {
-        fields.report(
+        fields.must_have(
+            &["wavelength"],
             None,
-            "the file does not give the `wavelength`",
+            "the file does not give the `wavelength`".into(),
             "add wavelength = \"1064 nm\", the wavelength in vacuum",
         );
     } else if wavelength.of(&fields.context.book.borrow().nominal()) == 0.0
@@ -277,15 +269,39 @@ fn enter_globals(fields: &Fields<'_, '_>) {
 
 fn read_form(fields: &Fields<'_, '_>) -> Option<Form> {
     if !fields.has("form") {
-        fields.report(
+        fields.must_have(
+            &["form"],
             None,
-            "the file does not give the `form`",
+            "the file does not give the `form`".into(),
             "add form = \"standing\" (from one end mirror to the other) or form = \"ring\"",
         );
+    }
+    if let Some((text, place)) = fields.text("form")
+        && let Some(meant) = form_meant(&text)
+    {
+        fields.report(
+            Some(place),
+            format!("`form` cannot be \"{text}\""),
+            &format!("write form = \"{meant}\""),
+        );
+        return None;
     }
     match fields.word("form", &FORMS)? {
         0 => Some(Form::Standing),
         _ => Some(Form::Ring),
+    }
+}
+
+/// The form that goes by another word in the trade.
+fn form_meant(word: &str) -> Option<&'static str> {
+    match word.to_lowercase().as_str() {
+        "linear" | "standing-wave" | "standing wave" | "two-mirror" | "v" | "z" | "x" => {
+            Some("standing")
+        }
+        "bow-tie" | "bowtie" | "cyclic" | "travelling" | "traveling" | "triangle" | "circular" => {
+            Some("ring")
+        }
+        _ => None,
     }
 }
 
@@ -296,20 +312,24 @@ fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
         let place = Some(fields.context.place(span));
         let Some(known) = KINDS.iter().find(|known| known.name == kind) else {
             let names = KINDS.map(|known| known.name);
+            let help = match nearest(kind, names) {
+                Some(near) => format!("did you mean `{near}`?"),
+                None => format!("kinds: {}", names.join(", ")),
+            };
             fields.report(
                 place,
-                format!("\"{kind}\" is no kind of part"),
-                &format!("kinds: {}", names.join(", ")),
+                format!("`{}` is no kind of part", shown(kind)),
+                &help,
             );
             continue;
         };
         match value.get_ref() {
             DeValue::Table(inner) => Fields::new(fields.context, inner, value.span())
                 .knowing(&known.keys[1..])
-                .refuse_unknown(&format!("a {kind}"), |_| None),
+                .refuse_unknown(&with_article(kind), |_| None),
             _ => fields.report(
                 place,
-                format!("the defaults of a {kind} are a table"),
+                format!("the defaults of {} are a table", with_article(kind)),
                 advice,
             ),
         }
@@ -330,7 +350,7 @@ fn read_general(fields: &Fields<'_, '_>) {
             };
             fields.report(
                 Some(fields.context.place(key_span)),
-                format!("there is no general tolerance for `{key}`"),
+                format!("there is no general tolerance for `{}`", shown(key)),
                 &help,
             );
             continue;
@@ -340,8 +360,9 @@ fn read_general(fields: &Fields<'_, '_>) {
             context::Raw::Text(text, _) => quantity::parse_general(text, kind),
             _ => Err(QuantityError {
                 span: 0..0,
-                message: "a general tolerance is a text".into(),
+                message: "a general tolerance is a text with a unit".into(),
                 help: Some(advice.into()),
+                bare: None,
             }),
         };
         let rule = match rule {
@@ -349,7 +370,7 @@ fn read_general(fields: &Fields<'_, '_>) {
             Err(error) => {
                 fields.report(
                     Some(found.place),
-                    format!("`{key}`: {}", error.message),
+                    error.about(&format!("`{key}`"), kind),
                     error.help.as_deref().unwrap_or(advice),
                 );
                 continue;
@@ -379,7 +400,7 @@ fn read_ties<'t>(context: &Context<'t>, top: &'t DeTable<'t>) -> Vec<ties::Writt
                     ties::split(context, &text, found.place, offset.unwrap_or(0))
                 }
                 _ => {
-                    context.report(Some(found.place), "a tie must be a text", advice);
+                    context.report(Some(found.place), "a tie is a text in quotes", advice);
                     None
                 }
             }
@@ -392,9 +413,9 @@ fn read_path<'t>(
     ambient: Index,
     defaults: Option<&'t DeTable<'t>>,
 ) -> Option<Vec<crate::cavity::Part>> {
-    let advice = "path = [ { mirror = \"M1\", … }, { gap = \"d1\", … }, … ], or [[path]] blocks";
+    let advice = "write it like path = [ { mirror = \"M1\", … }, { gap = \"d1\", … }, … ], or [[path]] blocks";
     if !fields.has("path") {
-        fields.report(None, "the file has no `path`", advice);
+        fields.must_have(&["path"], None, "the file has no `path`".into(), advice);
     }
     let items = fields.list("path", advice)?;
     if items.len() > MOST_PARTS {
@@ -404,7 +425,7 @@ fn read_path<'t>(
                 "the path has {} parts; at most {MOST_PARTS} are read",
                 items.len()
             ),
-            "",
+            "a path this long is hardly one cavity; is this the right file?",
         );
         return None;
     }
@@ -419,6 +440,9 @@ fn read_path<'t>(
 fn report_unused_overrides(context: &Context<'_>) {
     let book = context.book.borrow();
     for set in context.overrides.iter().filter(|set| !set.used.get()) {
+        if context.may_exist(&set.address) {
+            continue;
+        }
         let known = book.iter().map(|(_, entry)| entry.address.as_str());
         let help = match nearest(&set.address, known) {
             Some(near) => format!("did you mean {near}?"),
@@ -432,7 +456,7 @@ fn report_unused_overrides(context: &Context<'_>) {
         };
         context.report(
             Some(place),
-            format!("there is nothing at the address {}", set.address),
+            format!("there is nothing at the address {}", shown(&set.address)),
             &help,
         );
     }

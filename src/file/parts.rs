@@ -3,15 +3,36 @@
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-use super::context::{Context, in_order, kind_of};
+use super::TOP;
+use super::context::{Context, in_order, kind_of, nearest, shown, with_article};
 use super::fields::Fields;
-use super::keys::{KINDS, PROFILES, PartKind, SLIT_PLANES};
+use super::keys::{KINDS, PROFILES, PartKind, SLIT_PLANES, holds};
 use super::medium::{read_index, read_medium};
 use super::mirror::read_mirror;
 use super::slab::read_slab;
 use crate::cavity::{Element, Index, Opening, Origin, Part, Slot};
 use crate::optics::{PerPlane, Plane};
 use crate::quantity::Spread;
+
+/// Whether a kind of part knows a key.
+pub(super) fn knows(kind: &str, key: &str) -> bool {
+    KINDS
+        .iter()
+        .any(|known| known.name == kind && holds(known.keys, key).is_some())
+}
+
+/// The kind that goes by another name in the trade.
+fn kind_meant(word: &str) -> Option<&'static str> {
+    Some(match word {
+        "crystal" | "rod" | "plate" | "window" | "etalon" | "medium" | "block" | "glass" => "slab",
+        "space" | "drift" | "distance" | "air" | "propagation" | "free_space" => "gap",
+        "coupler" | "reflector" | "flat" | "end" => "mirror",
+        "iris" | "pinhole" | "slit" | "stop" => "aperture",
+        "grin" | "fiber" | "fibre" => "duct",
+        "abcd" => "matrix",
+        other => nearest(other, KINDS.map(|kind| kind.name))?,
+    })
+}
 
 /// Names a part cannot have: they begin addresses and measures of the whole cavity.
 const RESERVED: [&str; 19] = [
@@ -59,6 +80,11 @@ fn advice(kind: &str, key: &str) -> Option<&'static str> {
             "a thin lens has `focal`; a thick one is a slab with `entrance` and `exit`"
         }
         ("lens", "power") => "a thin lens is given by its focal length, `focal`",
+        ("mirror", "coating" | "hr" | "ar") => {
+            "a coating is given by `reflectance`, `transmission` and `loss`"
+        }
+        ("mirror", "tilt") => "a folding mirror's tilt is `aoi`, half the angle between the beams",
+        (_, "name") => "the kind key holds the name, as in { mirror = \"M1\", … }",
         ("aperture", "diameter") => "an aperture is given by its `radius`, half the diameter",
         _ => return None,
     })
@@ -77,7 +103,7 @@ pub(super) fn read_part<'t>(
         context.report(
             Some(place),
             format!(
-                "a part must be a table, and this is {}",
+                "a part is a table, and this is {}",
                 kind_of(value.get_ref())
             ),
             "write it like { mirror = \"M1\", roc = \"100 mm\" }",
@@ -95,33 +121,46 @@ pub(super) fn read_part<'t>(
     ] = kinds[..]
     else {
         let names = KINDS.map(|kind| kind.name);
-        let message = if kinds.is_empty() {
-            "this part does not say what it is".to_string()
-        } else {
-            format!(
-                "this part is a {} and a {} at once",
-                kinds[0].name, kinds[1].name
-            )
-        };
         let first = in_order(table).into_iter().next();
-        context.report(
-            Some(first.map_or(place, |(_, span, _)| context.place(span))),
-            message,
-            &format!(
-                "one key tells the kind and holds the name, as in {{ mirror = \"M1\", … }}; kinds: {}",
-                names.join(", ")
-            ),
+        let help = format!(
+            "one key tells the kind and holds the name, as in {{ mirror = \"M1\", … }}; kinds: {}",
+            names.join(", ")
         );
+        let (message, help) = match (&kinds[..], &first) {
+            ([one, other, ..], _) => (
+                format!(
+                    "this part is {} and {} at once",
+                    with_article(one.name),
+                    with_article(other.name)
+                ),
+                help,
+            ),
+            (_, Some((word, _, _))) if !KINDS.iter().any(|kind| knows(kind.name, word)) => (
+                format!("`{}` is no kind of part", shown(word)),
+                kind_meant(word).map_or(help, |kind| format!("write `{kind}`")),
+            ),
+            _ => ("this part does not say what it is".to_string(), help),
+        };
+        let place = first.map_or(place, |(_, span, _)| context.place(span));
+        context.report(Some(place), message, &help);
         return None;
     };
 
     let fields = Fields::new(context, table, value.span()).knowing(keys);
     let name = read_name(&fields, kind)?;
+    if index.is_some() {
+        context.kinds.borrow_mut().insert(name.clone(), kind);
+    }
     let defaults = defaults
         .and_then(|all| all.get(*kind))
         .and_then(|value| value.get_ref().as_table());
     let fields = fields.owned_by(&name).for_part(index, defaults);
-    fields.refuse_unknown(&format!("a {kind}"), |key| advice(kind, key));
+    fields.refuse_unknown(&with_article(kind), |key| {
+        advice(kind, key).or_else(|| {
+            let is_of_file = index.is_some() && TOP.iter().any(|known| known.name == key);
+            is_of_file.then_some("a key of the whole file stands above the first [[path]] block")
+        })
+    });
     fields.text("notes");
 
     let element = match *kind {
@@ -149,10 +188,7 @@ pub(super) fn read_part<'t>(
         _ => None,
     };
     let clear = match *kind {
-        // Coatings and polish end before the rim: common practice, no source.
-        "mirror" | "slab" => fields
-            .slot("clear")
-            .map_or(0.9, |slot| slot.of(&context.book.borrow().nominal())),
+        "mirror" | "slab" => read_clear(&fields),
         _ => 1.0,
     };
     Some(Part {
@@ -164,6 +200,24 @@ pub(super) fn read_part<'t>(
         opening,
         clear,
     })
+}
+
+/// Share of an opening that may be used.
+fn read_clear(fields: &Fields<'_, '_>) -> f64 {
+    // Coatings and polish end before the rim: common practice, no source.
+    const USUAL: f64 = 0.9;
+    let Some(slot) = fields.slot("clear") else {
+        return USUAL;
+    };
+    let clear = slot.of(&fields.context.book.borrow().nominal());
+    if clear == 0.0 {
+        fields.report(
+            Some(fields.place_of("clear")),
+            "an optic of which no share is clear lets no beam through",
+            "write the usable share of its diameter, such as clear = 0.9",
+        );
+    }
+    clear
 }
 
 fn read_name(fields: &Fields<'_, '_>, kind: &str) -> Option<String> {
@@ -257,9 +311,10 @@ fn read_hole(fields: &Fields<'_, '_>) -> Option<Opening> {
     let round = fields.has("radius");
     let slit = fields.has("half_width") || fields.has("plane");
     if round == slit {
-        fields.report(
+        fields.must_have(
+            &["radius", "half_width"],
             Some(fields.place.clone()),
-            "an aperture is either a round hole or a slit",
+            "an aperture is either a round hole or a slit".into(),
             "write radius = \"1 mm\", or half_width = \"1 mm\" with plane = \"tangential\" or \
              \"sagittal\"",
         );
@@ -320,6 +375,9 @@ fn read_matrix(fields: &Fields<'_, '_>) -> Option<Element> {
     })
 }
 
+/// Greatest entry of a matrix, so that products of many stay finite.
+const GREATEST_ENTRY: f64 = 1e12;
+
 /// A determinant further from 1 than this is no rounding of written digits.
 const DETERMINANT_WITHIN: f64 = 1e-6;
 
@@ -347,7 +405,7 @@ fn read_entries(fields: &Fields<'_, '_>, key: &'static str) -> Option<[f64; 4]> 
             None => vec![None],
         })
         .map(|found| match found?.raw {
-            super::context::Raw::Number(x) if x.is_finite() => Some(x),
+            super::context::Raw::Number(x) if x.abs() <= GREATEST_ENTRY => Some(x),
             _ => None,
         })
         .collect();
@@ -356,7 +414,7 @@ fn read_entries(fields: &Fields<'_, '_>, key: &'static str) -> Option<[f64; 4]> 
     let Some(m) = entries else {
         fields.report(
             Some(place),
-            format!("`{key}` must be two rows of two bare numbers"),
+            format!("`{key}` is two rows of two bare numbers of at most 1e12"),
             help,
         );
         return None;

@@ -3,7 +3,7 @@
 
 use toml::de::{DeTable, DeValue};
 
-use super::context::{Context, in_order};
+use super::context::{Context, in_order, shown};
 use super::fields::Fields;
 use super::keys::{Holds, POLARISATIONS, SHAPES, SOURCE, TOLERANCE};
 use super::limits::read_order;
@@ -76,8 +76,8 @@ fn read_tolerance<'t>(context: &Context<'t>, table: &'t DeTable<'t>) {
             if !matches!(item.get_ref(), DeValue::Table(_)) {
                 context.report(
                     Some(context.place(item.span())),
-                    format!("every entry of `{key}` must be a table"),
-                    "",
+                    format!("every entry of `{key}` is a table"),
+                    "write it like groups = [ { of = [\"M3.roc\", \"M4.roc\"], correlation = 1.0 } ]",
                 );
             }
         }
@@ -94,7 +94,7 @@ pub(super) fn check_input(fields: &Fields<'_, '_>, cavity: &Cavity) {
     if part.is_none_or(|part| part.kind() != "mirror") {
         fields.report(
             Some(place),
-            format!("no mirror is named \"{name}\""),
+            format!("no mirror is named \"{}\"", shown(&name)),
             "`input` names the mirror by which the source enters",
         );
     }

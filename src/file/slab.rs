@@ -27,7 +27,7 @@ pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
     {
         fields.report(
             Some(found.place),
-            "a slab has a thickness above zero",
+            "a slab is thicker than zero",
             "a thin optic with power is a lens",
         );
         return None;

@@ -1,9 +1,10 @@
 //! Ties: "d5.length = 146.68 mm - d2.length".
 
-use super::context::{Context, nearest};
+use super::context::{Context, nearest, shown};
+use super::reach::{GREATEST_INDEX, number_beyond};
 use crate::cavity::{Book, Slot, Tie};
 use crate::diagnostic::Place;
-use crate::quantity::{self, Kind, Spread};
+use crate::quantity::{self, Kind, Spread, human};
 
 /// A tie as written, split into its sides.
 pub(super) struct Written {
@@ -106,7 +107,7 @@ impl Written {
                     _ => {
                         context.report(
                             Some(place),
-                            format!("\"{}\" is no number to multiply with", factor.trim()),
+                            format!("\"{}\" is no number to multiply with", shown(factor.trim())),
                             FORM,
                         );
                         return None;
@@ -114,6 +115,14 @@ impl Written {
                 },
                 None => (1.0, term.text.as_str()),
             };
+            if rest.starts_with('(') || (rest.ends_with(')') && !rest.contains('(')) {
+                context.report(
+                    Some(place),
+                    "a tie has no brackets",
+                    "multiply them out: a tie is a sum of terms such as 2 * d1.length + 10 mm",
+                );
+                return None;
+            }
             let begins_with_letter = rest.starts_with(|c: char| c.is_alphabetic());
             if begins_with_letter {
                 let slot = self.address(context, book, rest, term.at)?;
@@ -209,7 +218,21 @@ impl Written {
 
     fn address(&self, context: &Context<'_>, book: &Book, name: &str, at: usize) -> Option<Slot> {
         let found = book.find(name);
-        if found.is_none() {
+        let begins = |sign| {
+            name.split_once(sign)
+                .map(|(first, _): (&str, _)| first.trim())
+        };
+        let unspaced = ['-', '+']
+            .into_iter()
+            .filter_map(begins)
+            .any(|first| book.find(first).is_some());
+        if found.is_none() && unspaced {
+            context.report(
+                Some(self.part(name, at)),
+                "a sign in a tie stands between spaces",
+                FORM,
+            );
+        } else if found.is_none() && !context.may_exist(name) {
             let known = book.iter().map(|(_, entry)| entry.address.as_str());
             let help = match nearest(name, known) {
                 Some(near) => format!("did you mean {near}?"),
@@ -217,7 +240,7 @@ impl Written {
             };
             context.report(
                 Some(self.part(name, at)),
-                format!("there is no quantity {name} to tie"),
+                format!("there is no quantity {} to tie", shown(name)),
                 &help,
             );
         }
@@ -261,11 +284,8 @@ pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
     if let Err(index) = book.set_ties(ties.clone()) {
         context.report(
             Some(written[index].place.clone()),
-            format!(
-                "{} follows itself, through this tie and others",
-                written[index].target
-            ),
-            "take one of the ties out of the circle",
+            format!("{} follows itself in the end", written[index].target),
+            "a tie must lead to quantities that are not tied back to it",
         );
         return;
     }
@@ -273,11 +293,28 @@ pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
         let old = before.entry(tie.target);
         let new = book.entry(tie.target);
         let stated = old.origin == crate::cavity::Origin::Written;
-        if !new.value.is_finite() {
+        let as_written = if new.is_reciprocal() && new.value != 0.0 {
+            new.value.recip()
+        } else {
+            new.value
+        };
+        if let Some(range) = number_beyond(as_written, new.kind) {
             context.report(
                 Some(written.place.clone()),
-                format!("this tie gives {} no value", new.address),
-                "check its constants",
+                format!(
+                    "this tie gives {} a value that does not lie {range}",
+                    new.address
+                ),
+                "check its constants and factors",
+            );
+            continue;
+        }
+        let is_index = matches!(new.key, "index" | "group_index");
+        if is_index && !(1.0..=GREATEST_INDEX).contains(&new.value) {
+            context.report(
+                Some(written.place.clone()),
+                format!("this tie makes {} {}", new.address, new.value),
+                "a refractive index lies between 1 and 100",
             );
             continue;
         }
@@ -288,14 +325,18 @@ pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
                 context.report(
                     context.places.borrow().get(&old.address).cloned(),
                     format!(
-                        "{} is tied, and what is written for it does not agree",
-                        old.address
+                        "{} is tied to {}, and something else is written for it",
+                        old.address,
+                        human(as_written, new.kind, 6)
                     ),
                     "leave it out of its part; the tie gives its value",
                 );
             }
         }
-        let must_not_be_negative = matches!(new.kind, Kind::Length | Kind::Strength);
+        let must_not_be_negative = matches!(
+            new.kind,
+            Kind::Length | Kind::Strength | Kind::Ratio | Kind::Power | Kind::Temperature
+        );
         if must_not_be_negative && new.value < 0.0 {
             context.report(
                 Some(written.place.clone()),

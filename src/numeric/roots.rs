@@ -200,6 +200,10 @@ fn derivative(c: &[f64]) -> Vec<f64> {
 /// Real parts of all roots of a Chebyshev series: eigenvalues of its colleague matrix
 /// (Good, Q. J. Math. 12, 61 (1961)).
 fn real_parts_of_roots(c: &[f64]) -> Vec<f64> {
+    // An iteration for eigenvalues does not end on what is no number.
+    if !c.iter().all(|x| x.is_finite()) {
+        return Vec::new();
+    }
     let largest = c.iter().fold(0.0_f64, |m, x| m.max(x.abs()));
     let degree = c
         .iter()

@@ -3,6 +3,8 @@
 use std::fmt;
 use std::ops::Range;
 
+use super::Kind;
+
 /// Why a text is not the quantity wanted, and what to write instead.
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct QuantityError {
@@ -12,6 +14,8 @@ pub struct QuantityError {
     pub message: String,
     /// What to write instead.
     pub help: Option<String>,
+    /// The number as written, where all that it lacks is its unit.
+    pub bare: Option<String>,
 }
 
 impl QuantityError {
@@ -21,6 +25,30 @@ impl QuantityError {
             span,
             message: message.into(),
             help: None,
+            bare: None,
+        }
+    }
+
+    /// The message about a quantity that the reader knows by a name, such as "`thermal`".
+    ///
+    /// Messages speak of "this" or of the kind where no name is known.
+    pub fn about(&self, name: &str, kind: Kind) -> String {
+        let phrase = kind.phrase();
+        if let Some(number) = &self.bare {
+            return format!("{name} needs a unit, and {} has none", quoted(number));
+        }
+        if phrase.ends_with(name.trim_matches('`')) {
+            return self.message.clone();
+        }
+        if let Some(rest) = self.message.strip_prefix("this is ") {
+            return format!("{name} is {rest}");
+        }
+        let Some(rest) = self.message.strip_prefix(phrase) else {
+            return self.message.clone();
+        };
+        match rest.strip_prefix(" is wanted here") {
+            Some(rest) => format!("{name} is {phrase}{rest}"),
+            None => format!("{name}{rest}"),
         }
     }
 

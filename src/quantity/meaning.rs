@@ -51,9 +51,13 @@ pub fn parse(text: &str, kind: Kind) -> Result<Quantity, QuantityError> {
 /// being no text.
 pub fn from_number(number: f64, kind: Kind) -> Result<Quantity, QuantityError> {
     if !number.is_finite() {
+        let help = if kind.is_surface() && number.is_infinite() {
+            "write \"flat\"".to_owned()
+        } else {
+            like(kind)
+        };
         return Err(
-            QuantityError::new(0..0, format!("{} is a finite number", kind.phrase()))
-                .help(like(kind)),
+            QuantityError::new(0..0, format!("{} is a finite number", kind.phrase())).help(help),
         );
     }
     let written = Written::from_f64(number);

@@ -116,7 +116,7 @@ pub(super) fn unitless(number: &str, kind: Kind, span: Range<usize>) -> Quantity
         Kind::Face => " convex",
         _ => "",
     };
-    QuantityError::new(
+    let error = QuantityError::new(
         span,
         format!(
             "{} is wanted here, and {} has no unit",
@@ -124,7 +124,11 @@ pub(super) fn unitless(number: &str, kind: Kind, span: Range<usize>) -> Quantity
             quoted(number)
         ),
     )
-    .help(format!("write \"{number} {unit}{sense}\", with its unit"))
+    .help(format!("write \"{number} {unit}{sense}\", with its unit"));
+    QuantityError {
+        bare: Some(number.to_owned()),
+        ..error
+    }
 }
 
 pub(super) fn out_of_range(kind: Kind, span: Range<usize>) -> QuantityError {

@@ -22,6 +22,7 @@ impl Objection {
             span,
             message: self.message,
             help: self.help,
+            bare: None,
         }
     }
 }
@@ -86,7 +87,10 @@ fn nominal(number: f64, kind: Kind, is_ratio: bool) -> Result<(), Objection> {
             Kind::Temperature => "this temperature lies below absolute zero".to_owned(),
             _ => format!("{} is never negative", kind.phrase()),
         };
-        return Err(Objection::new(message, None));
+        return Err(Objection::new(
+            message,
+            Some("check its sign and its unit".to_owned()),
+        ));
     }
     if kind.is_never_zero() && number.abs() < LEAST_RADIUS {
         let help = kind
@@ -100,10 +104,14 @@ fn nominal(number: f64, kind: Kind, is_ratio: bool) -> Result<(), Objection> {
         return Err(Objection::new(message, help));
     }
     if is_ratio && number > 1.0 {
-        let is_percent = number <= 100.0;
+        let is_percent = (2.0..=100.0).contains(&number);
         return Err(Objection::new(
             format!("{} lies between 0 and 1 (100 %)", kind.phrase()),
-            is_percent.then(|| format!("write \"{number} %\" if that is meant")),
+            Some(if is_percent {
+                format!("write \"{number} %\" if that is meant")
+            } else {
+                format!("write it like \"{}\"", kind.example())
+            }),
         ));
     }
     Ok(())

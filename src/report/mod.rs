@@ -4,5 +4,6 @@
 pub mod describe;
 pub mod document;
 pub mod figure;
+pub mod harmless;
 pub mod number;
 pub mod render;

@@ -3,6 +3,7 @@
 use annotate_snippets::{AnnotationKind, Group, Level, Origin, Renderer, Snippet};
 
 use crate::diagnostic::{Diagnostic, Severity, Source};
+use crate::report::harmless::harmless;
 
 /// Most diagnostics that are shown; the rest is counted.
 const SHOWN: usize = 20;
@@ -10,15 +11,37 @@ const SHOWN: usize = 20;
 /// The diagnostics as text, with ANSI colours that the caller may strip.
 pub fn render(diagnostics: &[Diagnostic], sources: &[Source]) -> String {
     let renderer = Renderer::styled().term_width(100);
+    let sources: Vec<Source> = sources
+        .iter()
+        .map(|source| Source {
+            name: harmless(&source.name).into(),
+            text: harmless(&source.text).into(),
+        })
+        .collect();
     let mut out = String::new();
     for diagnostic in diagnostics.iter().take(SHOWN) {
-        out += &renderer.render(&[group(diagnostic, sources)]);
+        let diagnostic = Diagnostic {
+            message: brief(&diagnostic.message),
+            help: diagnostic.help.as_deref().map(brief),
+            ..diagnostic.clone()
+        };
+        out += &renderer.render(&[group(&diagnostic, &sources)]);
         out += "\n\n";
     }
     if diagnostics.len() > SHOWN {
         out += &format!("… and {} more\n", diagnostics.len() - SHOWN);
     }
     out
+}
+
+/// A sentence for one line or a few: harmless, and not longer than anyone reads.
+fn brief(text: &str) -> String {
+    const MOST: usize = 600;
+    let one_line = harmless(text).replace(['\n', '\t'], " ");
+    match one_line.char_indices().nth(MOST) {
+        Some((end, _)) => format!("{}…", &one_line[..end]),
+        None => one_line,
+    }
 }
 
 fn group<'a>(diagnostic: &'a Diagnostic, sources: &'a [Source]) -> Group<'a> {

@@ -4,6 +4,7 @@ use anstyle::{AnsiColor, Style};
 use comfy_table::{CellAlignment, ContentArrangement};
 
 use crate::report::document::{Align, Block, Document, Table, Tone};
+use crate::report::harmless::harmless;
 
 /// Columns that text is wrapped to.
 pub const WIDTH: usize = 80;
@@ -14,6 +15,7 @@ pub fn render(document: &Document) -> String {
     for block in &document.blocks {
         match block {
             Block::Title(text) => {
+                let text = harmless(text).replace('\n', " ");
                 let bold = Style::new().bold();
                 out += &format!("{bold}{text}{bold:#}\n");
             }

@@ -1,0 +1,10 @@
+//! Files in the words of the format: whatever is a cavity is checked without a number that is none.
+
+#![no_main]
+
+#[path = "../../faults/grammar.rs"]
+mod grammar;
+
+libfuzzer_sys::fuzz_target!(|bytes: &[u8]| {
+    grammar::examine(&grammar::cavity_text(bytes));
+});

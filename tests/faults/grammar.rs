@@ -214,8 +214,10 @@ fn value(c: &mut Choices<'_>, kind: &str) -> String {
 /// A key and the kind of its value.
 type Key = (&'static str, &'static str);
 
+type PartKind = (&'static str, &'static [Key], &'static [&'static [Key]]);
+
 /// A kind of part, the keys that it always has, and groups of keys that it may have.
-const PARTS: [(&str, &[Key], &[&[Key]]); 9] = [
+const PARTS: [PartKind; 9] = [
     (
         "mirror",
         &[("roc", "radius")],
@@ -449,7 +451,7 @@ pub fn examine(text: &str) -> bool {
     true
 }
 
-/// What is null stands beside a reason, unless it is written that way for lack of an opening.
+/// What is null stands beside a reason.
 fn assert_explained(value: &serde_json::Value, path: &mut Vec<String>) {
     match value {
         serde_json::Value::Object(fields) => {

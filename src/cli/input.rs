@@ -1,7 +1,7 @@
 //! Reading what was typed: a cavity file from disk, a quantity behind an option.
 
 use std::fs::File;
-use std::io::Read;
+use std::io::{ErrorKind, Read};
 use std::ops::Range;
 use std::path::Path;
 
@@ -99,7 +99,13 @@ fn read(path: &Path, name: &str) -> Result<String, Answer> {
         };
         refuse(&[diagnostic], &[source])
     };
-    let unreadable = |error: std::io::Error| fail(format!("cannot read the file: {error}"), None);
+    let unreadable = |error: std::io::Error| match error.kind() {
+        ErrorKind::NotFound => fail(
+            "there is no such file".into(),
+            Some("check its name, its ending and the folder you are in"),
+        ),
+        _ => fail(format!("cannot read the file: {error}"), None),
+    };
     if path.is_dir() {
         return Err(fail(
             "this is a folder, not a cavity file".into(),
@@ -119,6 +125,13 @@ fn read(path: &Path, name: &str) -> Result<String, Answer> {
     }
     String::from_utf8(bytes).map_err(|error| {
         let good = error.utf8_error().valid_up_to();
+        let help = match error.as_bytes() {
+            [0xff, 0xfe, ..] | [0xfe, 0xff, ..] => "this looks like UTF-16; save it as UTF-8",
+            _ => {
+                "save it as UTF-8; often this is a µ or ° from an old editor, and \"um\" or \
+                 \"deg\" will do"
+            }
+        };
         let text = String::from_utf8_lossy(error.as_bytes()).into_owned();
         let diagnostic = Diagnostic {
             severity: Severity::Error,
@@ -128,11 +141,7 @@ fn read(path: &Path, name: &str) -> Result<String, Answer> {
                 span: good..good + 1,
             }),
             label: String::new(),
-            help: Some(
-                "save it as UTF-8; often this is a µ or ° from an old editor, and \"um\" or \
-                 \"deg\" will do"
-                    .into(),
-            ),
+            help: Some(help.into()),
         };
         let source = Source {
             name: name.into(),

@@ -168,7 +168,7 @@ fn a_gigabyte_is_not_read() {
 fn what_is_no_file_is_refused() {
     let folder = Folder::new();
     assert!(refused(&folder.0).contains("folder"));
-    refused(&folder.0.join("missing.toml"));
+    assert!(refused(&folder.0.join("missing.toml")).contains("no such file"));
     refused(&folder.write("").join("beneath.toml"));
     refused(&folder.write(""));
 }

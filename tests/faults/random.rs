@@ -4,8 +4,16 @@ use proptest::prelude::*;
 
 use crate::grammar::{cavity_text, examine, examine_load};
 
+/// As many cases as `PROPTEST_CASES` asks for.
+fn config() -> ProptestConfig {
+    const USUAL: u32 = 1500;
+    let asked = std::env::var("PROPTEST_CASES").ok();
+    let cases = asked.and_then(|count| count.parse().ok()).unwrap_or(USUAL);
+    ProptestConfig::with_cases(cases)
+}
+
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 1500, ..ProptestConfig::default() })]
+    #![proptest_config(config())]
 
     #[test]
     fn files_in_the_words_of_the_format_are_answered(

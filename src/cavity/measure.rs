@@ -187,7 +187,7 @@ impl Measure {
         let name = &described.name;
         if !has_inside {
             return Err(MeasureError {
-                message: format!("{name} is a {} and has no inside", described.kind()),
+                message: format!("the {} {name} has no inside", described.kind()),
                 help: format!("write {name}.spot for the beam radius there"),
             });
         }

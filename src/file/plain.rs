@@ -22,7 +22,7 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
     {
         context.report(
             Some(found.place),
-            "`highest_order` must be a whole number from 1 to 100",
+            "`highest_order` is a whole number from 1 to 100",
             "write it like highest_order = 12",
         );
     }

@@ -10,7 +10,7 @@ use super::lengths::RoundTripLengths;
 use super::measures::{Evaluator, Workspace};
 use super::ranges::{End, QuantityRange, stable_ranges};
 use crate::cavity::{
-    Cavity, Element, Entry, Form, Incidence, Index, Measure, Opening, Origin, Part, slab_crossing,
+    Cavity, Element, Entry, Form, Index, Measure, Opening, Origin, Part, slab_crossing,
 };
 use crate::optics::beam::Beam;
 use crate::optics::{PerPlane, Plane};
@@ -235,7 +235,8 @@ pub struct Range {
     /// The computed range, for readers of the library.
     #[serde(skip)]
     pub found: QuantityRange,
-    /// Half the width of the quantity's tolerance, in the units of the range.
+    /// Half the width of the quantity's tolerance as written: of a radius in metres, of a flat in
+    /// 1/m.
     #[serde(skip)]
     pub tolerance: Option<f64>,
     /// How the quantity is written.
@@ -283,6 +284,9 @@ pub fn check(cavity: &Cavity) -> Check {
     let mut cautions = cavity.cautions().to_vec();
     cautions.extend(mode_cautions(&view));
     cautions.extend(data_cautions(cavity));
+    cautions.extend(square_on_folds(cavity, &values));
+    let stations = view.stations();
+    cautions.extend(clipping_caution(&stations));
     Check {
         title: cavity.title.clone(),
         form: cavity.form().name(),
@@ -298,7 +302,7 @@ pub fn check(cavity: &Cavity) -> Check {
             fsr_hz: lengths.free_spectral_range(),
             reflections: cavity.reflections(),
         },
-        stations: view.stations(),
+        stations,
         waists: view.waists(),
         leaving: view.leaving(),
         ranges: stable_ranges(cavity)
@@ -395,7 +399,7 @@ impl View<'_> {
             ),
         };
         stations.push(self.station(part, None, pass, begins, entry, outside));
-        let inside = inner_medium(part);
+        let inside = part.inside();
         let is_thin = at.length == 0.0 && matches!(part.element, Element::Matrix { .. });
         if let Some(inside) = inside
             && !is_thin
@@ -431,6 +435,16 @@ impl View<'_> {
         });
         let footprint = footprint.filter(|radii| radii.iter().all(|radius| radius.is_finite()));
         let lacks = tangential.is_none() || sagittal.is_none() || footprint.is_none();
+        let clip_loss = footprint
+            .and_then(|radii| self.clip_loss(part, radii))
+            .filter(|loss| loss.is_finite());
+        let why = if lacks {
+            Some(self.why().unwrap_or_else(|| TOO_LARGE.into()))
+        } else if part.opening.is_none() {
+            Some("no opening is given".into())
+        } else {
+            clip_loss.is_none().then(|| TOO_LARGE.into())
+        };
         Station {
             part: part.name.clone(),
             kind: part.kind(),
@@ -440,10 +454,8 @@ impl View<'_> {
             tangential,
             sagittal,
             footprint_m: footprint,
-            clip_loss: footprint
-                .and_then(|radii| self.clip_loss(part, radii))
-                .filter(|loss| loss.is_finite()),
-            why: lacks.then(|| self.why().unwrap_or_else(|| TOO_LARGE.into())),
+            clip_loss,
+            why,
         }
     }
 
@@ -494,12 +506,14 @@ impl View<'_> {
         let mut waists = Vec::new();
         for (index, part) in self.cavity.parts().iter().enumerate() {
             let at = &self.envelope.parts[index];
-            let bends = match &part.element {
-                Element::Gap { .. } => false,
-                Element::Slab(slab) => slab.thermal.is_some(),
-                Element::Duct { .. } => true,
-                _ => continue,
-            };
+            let holds_waist = matches!(
+                part.element,
+                Element::Gap { .. } | Element::Slab(_) | Element::Duct { .. }
+            );
+            if !holds_waist {
+                continue;
+            }
+            let bends = part.bends_inside();
             for plane in Plane::BOTH {
                 waists.push(self.waist(part, at, plane, bends));
             }
@@ -515,9 +529,7 @@ impl View<'_> {
         } else {
             None
         };
-        let index = inner_medium(part)
-            .unwrap_or(Index::VACUUM)
-            .phase(self.values);
+        let index = part.inside().unwrap_or(Index::VACUUM).phase(self.values);
         let beam = at.entered[plane];
         let from_start = beam.distance_to_waist(index);
         let waist = beam.waist_radius(self.wavelength);
@@ -571,15 +583,13 @@ impl View<'_> {
         };
         let ambient = self.cavity.ambient();
         let beam = leaving::behind(part, mirror, ambient, self.values, arriving);
-        let outside = match mirror.substrate {
-            Some(_) => ambient.phase(self.values),
-            None => part.before.phase(self.values),
-        };
+        let outside = ambient.phase(self.values);
         let plane = |plane: Plane| {
+            let beam = beam?[plane];
             let leaving = LeavingPlane {
-                waist_m: beam[plane].waist_radius(self.wavelength),
-                from_outer_face_m: beam[plane].distance_to_waist(outside),
-                divergence_rad: beam[plane].divergence(self.wavelength, outside),
+                waist_m: beam.waist_radius(self.wavelength),
+                from_outer_face_m: beam.distance_to_waist(outside),
+                divergence_rad: beam.divergence(self.wavelength, outside),
             };
             let is_finite = leaving.waist_m.is_finite()
                 && leaving.from_outer_face_m.is_finite()
@@ -588,24 +598,17 @@ impl View<'_> {
         };
         let (tangential, sagittal) = (plane(Plane::Tangential), plane(Plane::Sagittal));
         let lacks = tangential.is_none() || sagittal.is_none();
+        let reason = match beam {
+            None => "the beam is totally reflected on its way out",
+            Some(_) => TOO_LARGE,
+        };
         Some(Leaving {
             mirror: part.name.clone(),
             pass,
             tangential,
             sagittal,
-            why: lacks.then(|| self.why().unwrap_or_else(|| TOO_LARGE.into())),
+            why: lacks.then(|| self.why().unwrap_or_else(|| reason.into())),
         })
-    }
-}
-
-/// The medium inside a part that has a length.
-fn inner_medium(part: &Part) -> Option<Index> {
-    match &part.element {
-        Element::Gap { medium, .. } => Some(*medium),
-        Element::Slab(slab) => Some(slab.index),
-        Element::Duct { index, .. } => Some(*index),
-        Element::Matrix { .. } => Some(part.after),
-        _ => None,
     }
 }
 
@@ -659,6 +662,50 @@ fn mode_cautions(view: &View<'_>) -> Vec<String> {
     cautions
 }
 
+/// A share of the power that no low-loss cavity can spare in one pass.
+const MUCH_CLIPPED: f64 = 0.01;
+
+fn clipping_caution(stations: &[Station]) -> Option<String> {
+    let mut names: Vec<&str> = stations
+        .iter()
+        .filter(|station| station.clip_loss.is_some_and(|loss| loss > MUCH_CLIPPED))
+        .map(|station| station.part.as_str())
+        .collect();
+    names.dedup();
+    (!names.is_empty()).then(|| {
+        format!(
+            "more than 1 % of a centred beam misses the opening of {}; the mode is computed as if \
+             nothing were clipped",
+            list(&names)
+        )
+    })
+}
+
+/// Mirrors inside a path that send the beam straight back.
+fn square_on_folds(cavity: &Cavity, values: &[f64]) -> Option<String> {
+    let last = cavity.parts().len() - 1;
+    let names: Vec<&str> = cavity
+        .parts()
+        .iter()
+        .enumerate()
+        .filter(|(index, part)| {
+            let is_end = cavity.form() == Form::Standing && (*index == 0 || *index == last);
+            match &part.element {
+                Element::Mirror(mirror) => !is_end && mirror.incidence.of(values) == 0.0,
+                _ => false,
+            }
+        })
+        .map(|(_, part)| part.name.as_str())
+        .collect();
+    (!names.is_empty()).then(|| {
+        format!(
+            "no angle of incidence for {}, a mirror within the path: it counts as met square-on, \
+             and would send the beam straight back; write its aoi",
+            list(&names)
+        )
+    })
+}
+
 /// Doubts about the numbers themselves.
 fn data_cautions(cavity: &Cavity) -> Vec<String> {
     let mut cautions = Vec::new();
@@ -666,12 +713,9 @@ fn data_cautions(cavity: &Cavity) -> Vec<String> {
         .parts()
         .iter()
         .filter(|part| {
-            let medium = match &part.element {
-                Element::Gap { medium, .. } => Some(*medium),
-                Element::Slab(slab) => Some(slab.index),
-                Element::Duct { index, .. } => Some(*index),
-                _ => None,
-            };
+            let medium = part
+                .inside()
+                .filter(|_| !matches!(part.element, Element::Matrix { .. }));
             medium.is_some_and(|medium| !medium.has_group())
         })
         .map(|part| part.name.as_str())
@@ -737,11 +781,8 @@ fn data_cautions(cavity: &Cavity) -> Vec<String> {
 fn has_tilted_curved_face(values: &[f64]) -> impl Fn(&Part) -> bool {
     move |part| match &part.element {
         Element::Slab(slab) => {
-            let tilted = match slab.incidence {
-                Incidence::Brewster => true,
-                Incidence::Angle(slot) => slot.of(values) != 0.0,
-            };
-            tilted && (slab.entrance.of(values) != 0.0 || slab.exit.of(values) != 0.0)
+            slab.is_tilted(values)
+                && (slab.entrance.of(values) != 0.0 || slab.exit.of(values) != 0.0)
         }
         _ => false,
     }
@@ -809,7 +850,7 @@ fn describe_range(cavity: &Cavity, found: QuantityRange, stability: Stability) -
     }
 }
 
-/// Half the width of a quantity's tolerance in the units of its range: the limits, or twice the
+/// Half the width of a quantity's tolerance as written: half of its limits, or twice the
 /// standard uncertainty.
 fn tolerance(entry: &Entry) -> Option<f64> {
     let half = match entry.spread {
@@ -817,12 +858,7 @@ fn tolerance(entry: &Entry) -> Option<f64> {
         Spread::Limits { below, above } => 0.5 * (below + above),
         Spread::Standard { uncertainty } => 2.0 * uncertainty,
     };
-    let of_curvature = entry.is_reciprocal() && entry.value != 0.0;
-    Some(if of_curvature {
-        half * entry.value * entry.value
-    } else {
-        half
-    })
+    Some(half)
 }
 
 fn no_value(measure: Measure) -> &'static str {

@@ -115,7 +115,10 @@ impl<T: Real> Envelope<T> {
                     part.at_exit = beam;
                     PerPlane::both(zero)
                 }
-                Piece::Given(_) => beam.zip(matrix, Beam::gouy_phase),
+                Piece::Given(_) => {
+                    part.at_exit = next;
+                    beam.zip(matrix, Beam::gouy_phase)
+                }
                 Piece::Kick(_) | Piece::Opening => PerPlane::both(zero),
             };
             envelope.gouy_phase = envelope.gouy_phase.zip(phase, |a, b| a + b);

@@ -10,44 +10,49 @@ use crate::optics::beam::Beam;
 use crate::optics::element::duct::Stretch;
 use crate::optics::element::surface::Crossing;
 
-/// The beam behind a mirror's outer face, in the ambient.
+/// The beam behind a mirror's outer face, in the ambient; none where it is totally reflected on
+/// its way out.
 ///
-/// Both faces have their vertex on the beam, and their normals there are parallel.
+/// Both faces have their vertex on the beam, and their normals there are parallel. Without a
+/// substrate the mirror is a face between its medium and the ambient.
 pub fn behind(
     part: &Part,
     mirror: &Mirror,
     ambient: Index,
     values: &[f64],
     arriving: PerPlane<Beam<f64>>,
-) -> PerPlane<Beam<f64>> {
-    let Some(substrate) = &mirror.substrate else {
-        return arriving;
-    };
+) -> Option<PerPlane<Beam<f64>>> {
     let own = |pair: PerPlane<Beam<f64>>| if part.swapped { pair.swapped() } else { pair };
-    let curvature = mirror.curvature.map(|slot| slot.of(values));
-    let curvature = if part.swapped {
-        curvature.swapped()
-    } else {
-        curvature
-    };
-    let inside = substrate.index.phase(values);
-    let enter = Crossing::at_incidence(
-        part.before.phase(values),
-        inside,
-        mirror.incidence.of(values),
-    );
-    // A concave face has its centre on the beam's side.
-    let front = enter.matrices(curvature.map(|c| -c));
-    let path = Stretch::uniform(substrate.thickness.of(values) / enter.cos_to, inside).matrix();
     let outside = ambient.phase(values);
-    let sine = (1.0 - enter.cos_to * enter.cos_to).max(0.0).sqrt() * inside / outside;
-    let leave = Crossing {
-        index_from: inside,
-        index_to: outside,
-        cos_from: enter.cos_to,
-        cos_to: (1.0 - sine * sine).max(0.0).sqrt(),
+    let before = part.before.phase(values);
+    let incidence = mirror.incidence.of(values);
+    let through = match &mirror.substrate {
+        None => cross(before, outside, incidence)?
+            .0
+            .matrices(PerPlane::both(0.0)),
+        Some(substrate) => {
+            let curvature = mirror.curvature.map(|slot| slot.of(values));
+            let curvature = if part.swapped {
+                curvature.swapped()
+            } else {
+                curvature
+            };
+            let inside = substrate.index.phase(values);
+            let (enter, refracted) = cross(before, inside, incidence)?;
+            let (leave, _) = cross(inside, outside, refracted)?;
+            let length = substrate.thickness.of(values) / enter.cos_to;
+            let path = Stretch::uniform(length, inside).matrix();
+            // A concave face has its centre on the beam's side; a convex back bulges outwards.
+            let front = enter.matrices(curvature.map(|c| -c));
+            let back = leave.matrices(PerPlane::both(-substrate.back.of(values)));
+            front.zip(back, |front, back| front.then(path).then(back))
+        }
     };
-    let back = leave.matrices(PerPlane::both(-substrate.back.of(values)));
-    let through = front.zip(back, |front, back| front.then(path).then(back));
-    own(own(arriving).zip(through, Beam::after))
+    Some(own(own(arriving).zip(through, Beam::after)))
+}
+
+/// The crossing of a face and the angle behind it, in radians; none for total reflection.
+fn cross(from: f64, to: f64, incidence: f64) -> Option<(Crossing<f64>, f64)> {
+    let sine = from * incidence.sin() / to;
+    (sine < 1.0).then(|| (Crossing::at_incidence(from, to, incidence), sine.asin()))
 }

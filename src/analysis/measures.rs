@@ -140,7 +140,7 @@ impl<'c> Evaluator<'c> {
         workspace: &mut Workspace<T>,
         mut take: impl FnMut(usize, T, T::Mask),
     ) -> Modes<T> {
-        let way = self.walk(values, workspace);
+        let way = self.one_way(values, workspace);
         let form = self.cavity.form();
         let modes = way.map(|way| PlaneMode::of(form, way));
         let evaluation = Evaluation {
@@ -158,8 +158,13 @@ impl<'c> Evaluator<'c> {
         Modes(modes)
     }
 
+    /// The product of all ray matrices of one walk along the path.
     #[inline(always)]
-    fn walk<T: Real>(&self, values: &[T], workspace: &mut Workspace<T>) -> PerPlane<RayMatrix<T>> {
+    pub fn one_way<T: Real>(
+        &self,
+        values: &[T],
+        workspace: &mut Workspace<T>,
+    ) -> PerPlane<RayMatrix<T>> {
         let mut product = PerPlane::both(RayMatrix::identity());
         workspace.records.resize(
             self.records,

@@ -7,7 +7,7 @@
 
 use super::eigenmode::Eigenmode;
 use super::envelope::{Envelope, Inside};
-use crate::cavity::{Cavity, Element, Incidence, Opening, Part};
+use crate::cavity::{Cavity, Element, Opening, Part};
 use crate::optics::{PerPlane, Plane};
 
 /// Deviation of a straight line from the curve at which an interval is halved, in the radius and
@@ -166,10 +166,7 @@ fn shape(part: &Part, values: &[f64], ends_here: bool) -> Shape {
         Element::Gap { .. } => Shape::Gap,
         Element::Lens { power, .. } => Shape::Lens(Bend::of(power.map(|slot| slot.of(values)))),
         Element::Slab(slab) => Shape::Slab {
-            tilted: match slab.incidence {
-                Incidence::Brewster => true,
-                Incidence::Angle(slot) => slot.of(values) != 0.0,
-            },
+            tilted: slab.is_tilted(values),
         },
         Element::Duct { .. } => Shape::Duct,
         Element::Aperture => {

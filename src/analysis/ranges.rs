@@ -7,6 +7,7 @@
 
 use super::eigenmode::{EDGE, PlaneMode};
 use super::lengths::RoundTripLengths;
+use super::measures::{Evaluator, Workspace};
 use crate::cavity::{Cavity, Form, Slot};
 use crate::numeric::roots::{DEGREE, Proxy, bracketed, nodes};
 use crate::optics::Plane;
@@ -164,6 +165,9 @@ const FUNCTIONS: usize = 8;
 struct Probe<'a> {
     cavity: &'a Cavity,
     slot: Slot,
+    /// The walk with everything multiplied out that the quantity leaves alone.
+    walk: Evaluator<'a>,
+    workspace: Workspace<f64>,
     values: Vec<f64>,
     nominal: f64,
     /// A change that matters: the round trip's length, or its reciprocal for curvatures.
@@ -215,6 +219,8 @@ impl<'a> Probe<'a> {
         let mut probe = Probe {
             cavity,
             slot,
+            walk: Evaluator::new(cavity, Vec::new()).varying(&[slot]),
+            workspace: Workspace::default(),
             values,
             nominal,
             scale,
@@ -268,7 +274,7 @@ impl<'a> Probe<'a> {
         self.evaluations += 1;
         self.values[self.slot.index()] = x;
         self.cavity.book().follow_ties(&mut self.values);
-        let way = self.cavity.one_way(&self.values);
+        let way = self.walk.one_way(&self.values, &mut self.workspace);
         let mut functions = [1.0; FUNCTIONS];
         let mut rounding: f64 = 0.0;
         let mut margin = f64::INFINITY;

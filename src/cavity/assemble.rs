@@ -185,23 +185,49 @@ fn check_ends(form: Form, parts: &[Part], faults: &mut Vec<Fault>) {
     }
 }
 
-/// Media at the junctions: that of the gap on either side, else the ambient.
+/// Media at the junctions: that of the nearest gap on either side, seen through whatever is thin;
+/// else the ambient.
 fn settle_media(form: Form, ambient: Index, parts: &mut [Part]) {
-    let gap_medium = |part: &Part| match part.element {
-        Element::Gap { medium, .. } => Some(medium),
-        _ => None,
-    };
     let count = parts.len();
+    let media: Vec<Option<Index>> = parts
+        .iter()
+        .map(|part| match part.element {
+            Element::Gap { medium, .. } => Some(medium),
+            _ => None,
+        })
+        .collect();
+    let is_thin: Vec<bool> = parts
+        .iter()
+        .map(|part| {
+            matches!(
+                part.element,
+                Element::Aperture | Element::Lens { .. } | Element::Matrix { .. }
+            )
+        })
+        .collect();
+    // The parts met from one on, forwards or backwards, once around a ring or to an end.
+    let nearest = |from: usize, forwards: bool| {
+        for step in 1..count {
+            let at = match (form, forwards) {
+                (Form::Ring, true) => (from + step) % count,
+                (Form::Ring, false) => (from + count - step) % count,
+                (Form::Standing, true) if from + step < count => from + step,
+                (Form::Standing, false) if step <= from => from - step,
+                _ => return None,
+            };
+            if media[at].is_some() || !is_thin[at] {
+                return media[at];
+            }
+        }
+        None
+    };
     for index in 0..count {
-        let neighbour = |step: usize| match form {
-            Form::Ring => gap_medium(&parts[(index + step) % count]),
-            Form::Standing => parts
-                .get((index + step).wrapping_sub(count))
-                .and_then(gap_medium),
-        };
-        let own = gap_medium(&parts[index]);
-        let before = own.or(neighbour(count - 1)).unwrap_or(ambient);
-        let after = own.or(neighbour(count + 1)).unwrap_or(ambient);
+        let before = media[index]
+            .or_else(|| nearest(index, false))
+            .unwrap_or(ambient);
+        let after = media[index]
+            .or_else(|| nearest(index, true))
+            .unwrap_or(ambient);
         let (before, after) = match (form, index) {
             // An end mirror sends the beam back into the medium it came from.
             (Form::Standing, 0) => (after, after),
@@ -263,22 +289,18 @@ fn check_slab(
     let name = &part.name;
     let outside = part.before.phase(values);
     let inside = slab.index.phase(values);
-    let tilted = match slab.incidence {
-        Incidence::Brewster => true,
-        Incidence::Angle(slot) => {
-            let angle = slot.of(values);
-            check_angle(angle, name, fault);
-            if (outside * angle.sin() / inside).abs() >= 1.0 {
-                fault(
-                    Some("aoi"),
-                    format!("the beam cannot enter {name}: it is totally reflected at its face"),
-                    "make the angle of incidence smaller, or check the indices on both sides",
-                );
-            }
-            angle != 0.0
+    if let Incidence::Angle(slot) = slab.incidence {
+        let angle = slot.of(values);
+        check_angle(angle, name, fault);
+        if (outside * angle.sin() / inside).abs() >= 1.0 {
+            fault(
+                Some("aoi"),
+                format!("the beam cannot enter {name}: it is totally reflected at its face"),
+                "make the angle of incidence smaller, or check the indices on both sides",
+            );
         }
-    };
-    if tilted && !part.before.bends_like(part.after, values) {
+    }
+    if slab.is_tilted(values) && !part.before.bends_like(part.after, values) {
         fault(
             None,
             format!("{name} is tilted and stands between two different media"),
@@ -313,15 +335,7 @@ fn tilt(part: &Part, values: &[f64]) -> Option<(bool, Side)> {
         Element::Mirror(Mirror {
             incidence, fold, ..
         }) if incidence.of(values) != 0.0 => Some((true, fold.unwrap_or(Side::Left))),
-        Element::Slab(Slab {
-            incidence, shift, ..
-        }) => {
-            let tilted = match incidence {
-                Incidence::Brewster => true,
-                Incidence::Angle(slot) => slot.of(values) != 0.0,
-            };
-            tilted.then_some((false, *shift))
-        }
+        Element::Slab(slab) => slab.is_tilted(values).then_some((false, slab.shift)),
         _ => None,
     }
 }

@@ -179,11 +179,7 @@ impl Measure {
             described.element,
             Element::Gap { .. } | Element::Slab(_) | Element::Duct { .. }
         );
-        let bends = match &described.element {
-            Element::Duct { .. } => true,
-            Element::Slab(slab) => slab.thermal.is_some(),
-            _ => false,
-        };
+        let bends = described.bends_inside();
         let name = &described.name;
         if !has_inside {
             return Err(MeasureError {

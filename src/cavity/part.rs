@@ -361,6 +361,16 @@ impl Mirror {
     }
 }
 
+impl Slab {
+    /// Whether the beam meets it at an angle.
+    pub fn is_tilted(&self, values: &[f64]) -> bool {
+        match self.incidence {
+            Incidence::Brewster => true,
+            Incidence::Angle(slot) => slot.of(values) != 0.0,
+        }
+    }
+}
+
 impl Index {
     fn slots(self) -> [Option<Slot>; 2] {
         match self {
@@ -372,6 +382,26 @@ impl Index {
 }
 
 impl Part {
+    /// The medium inside a part that has a length; of a given matrix, what follows it.
+    pub fn inside(&self) -> Option<Index> {
+        match &self.element {
+            Element::Gap { medium, .. } => Some(*medium),
+            Element::Slab(slab) => Some(slab.index),
+            Element::Duct { index, .. } => Some(*index),
+            Element::Matrix { .. } => Some(self.after),
+            _ => None,
+        }
+    }
+
+    /// Whether the beam inside is bent along its way and so has no single waist.
+    pub fn bends_inside(&self) -> bool {
+        match &self.element {
+            Element::Duct { .. } => true,
+            Element::Slab(slab) => slab.thermal.is_some(),
+            _ => false,
+        }
+    }
+
     /// The slots on which the part's ray matrices depend.
     pub fn ray_slots(&self) -> Vec<Slot> {
         let pair = |pair: PerPlane<Slot>| [Some(pair.tangential), Some(pair.sagittal)];

@@ -12,27 +12,33 @@ use crate::cavity::{Entry, Origin, Slot};
 use crate::diagnostic::Place;
 use crate::quantity::{Kind, Quantity, Spread};
 
-/// Keys that say the same thing in different ways: a default for one of them gives way where the
-/// part names another.
-const ALTERNATIVES: [&[&str]; 8] = [
-    &["fold", "fold_plane"],
-    &["roc", "roc_tangential", "roc_sagittal"],
-    &["focal", "focal_tangential", "focal_sagittal"],
-    &["diameter", "width", "height"],
-    &["strength", "strength_tangential", "strength_sagittal"],
-    &["thermal", "thermal_tangential", "thermal_sagittal"],
-    &["material", "axis", "index", "group_index"],
+/// Different ways of saying the same thing: a default gives way where the part names another way.
+const WAYS: [&[&[&str]]; 9] = [
+    &[&["fold"], &["fold_plane"]],
+    &[&["roc"], &["roc_tangential", "roc_sagittal"]],
+    &[&["focal"], &["focal_tangential", "focal_sagittal"]],
+    &[&["diameter"], &["width", "height"]],
+    &[&["radius"], &["half_width", "plane"]],
+    &[&["strength"], &["strength_tangential", "strength_sagittal"]],
+    &[&["thermal"], &["thermal_tangential", "thermal_sagittal"]],
     &[
-        "reflectance",
-        "reflectance_s",
-        "reflectance_p",
-        "transmission",
-        "transmission_s",
-        "transmission_p",
-        "loss",
-        "loss_s",
-        "loss_p",
+        &["thermal_per_watt"],
+        &["thermal_per_watt_tangential", "thermal_per_watt_sagittal"],
     ],
+    &[&["material", "axis"], &["index", "group_index"]],
+];
+
+/// What a coating does: a mirror that names any of it takes none of it from the defaults.
+const COATING: [&str; 9] = [
+    "reflectance",
+    "reflectance_s",
+    "reflectance_p",
+    "transmission",
+    "transmission_s",
+    "transmission_p",
+    "loss",
+    "loss_s",
+    "loss_p",
 ];
 
 /// One table, and who it is.
@@ -142,16 +148,19 @@ impl<'c, 't> Fields<'c, 't> {
             return Some(self.context.found(value));
         }
         let default = self.defaults?.get(key)?;
-        let gives_way = ALTERNATIVES
+        let said_otherwise = WAYS
             .iter()
-            .filter(|group| group.contains(&key))
-            .any(|group| group.iter().any(|other| self.names(other)));
+            .filter(|ways| ways.iter().any(|way| way.contains(&key)))
+            .flat_map(|ways| ways.iter().filter(|way| !way.contains(&key)))
+            .any(|way| way.iter().any(|other| self.names(other)));
+        let coated = COATING.contains(&key) && COATING.iter().any(|other| self.names(other));
+        let gives_way = said_otherwise || coated;
         (!gives_way).then(|| self.context.found(default))
     }
 
-    /// Whether the key has a value, wherever it comes from.
+    /// Whether the key has a value, wherever it comes from; a tie gives one too.
     pub fn has(&self, key: &str) -> bool {
-        self.find(key).is_some()
+        self.find(key).is_some() || self.context.is_tied(&self.address(key))
     }
 
     /// The place of a key's value, or of the whole table.
@@ -205,7 +214,11 @@ impl<'c, 't> Fields<'c, 't> {
     /// A quantity entered into the address book.
     pub fn slot(&self, key: &'static str) -> Option<Slot> {
         let kind = self.kind(key);
-        let found = self.find(key)?;
+        let Some(found) = self.find(key) else {
+            // A tied number may be left out: its value follows.
+            let is_tied = self.context.is_tied(&self.address(key));
+            return is_tied.then(|| self.enter(key, 0.0, Spread::Exact, Origin::Tied));
+        };
         let quantity = self.context.quantity(key, &found, kind)?;
         let reciprocal = matches!(kind, Kind::Radius | Kind::Face | Kind::Focal);
         let value = if reciprocal {

@@ -19,8 +19,10 @@ pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: I
             return Index::VACUUM;
         }
         if text.starts_with(|c: char| c.is_alphabetic()) {
+            let (name, axis) = with_axis(text);
+            let axis = axis.map(|axis| (axis.to_string(), found.place.clone()));
             let temperature = Cavity::TEMPERATURE;
-            return find_material(fields, text, None, temperature, found.place).unwrap_or(ambient);
+            return find_material(fields, name, axis, temperature, found.place).unwrap_or(ambient);
         }
     }
     let Some(quantity) = fields.context.quantity(key, &found, Kind::Number) else {
@@ -74,6 +76,16 @@ pub(super) fn read_slab_medium(fields: &Fields<'_, '_>) -> Option<Index> {
     find_material(fields, &name, axis, temperature, place)
 }
 
+/// A material and, behind it, the axis of a birefringent one: "sapphire o".
+fn with_axis(text: &str) -> (&str, Option<&str>) {
+    match text.rsplit_once(' ') {
+        Some((name, axis)) if material::find(text).is_err() && material::find(name).is_ok() => {
+            (name, Some(axis))
+        }
+        _ => (text, None),
+    }
+}
+
 fn find_material(
     fields: &Fields<'_, '_>,
     name: &str,
@@ -110,8 +122,8 @@ fn find_material(
             let help = match error {
                 AxisError::Isotropic { .. } => "leave out `axis`",
                 AxisError::Missing { .. } | AxisError::Unknown { .. } => {
-                    "write it like axis = \"e\", the crystal direction along which the light is \
-                     polarised"
+                    "the axis is the crystal direction along which the light is polarised: axis = \
+                     \"e\" in a slab, and behind the name of a medium or substrate, \"sapphire o\""
                 }
             };
             fields.report(Some(axis_place), error.to_string(), help);

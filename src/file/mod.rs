@@ -183,12 +183,11 @@ fn read_file<'t>(
     let ambient = medium::read_medium(&fields, "ambient", Index::VACUUM);
     let defaults = read_defaults(&fields);
     let parts = read_path(&fields, ambient, defaults);
-    plain::read_plain(&fields, ambient);
+    plain::read_plain(&fields, ambient, parts.as_deref().unwrap_or_default());
     ties::resolve_all(&context, &ties);
     report_unused_overrides(&context);
 
-    let (Some(form), Some(parts), true) = (form, parts, context.diagnostics.borrow().is_empty())
-    else {
+    let (Some(form), Some(parts)) = (form, parts) else {
         return Err(context.diagnostics.take());
     };
     let spans = part_spans(top);
@@ -198,7 +197,12 @@ fn read_file<'t>(
         parts,
         book: context.book.borrow().clone(),
     };
+    let in_order_so_far = context.diagnostics.borrow().is_empty();
     let mut cavity = Cavity::assemble(draft).map_err(|faults| {
+        if !in_order_so_far {
+            // What follows from a mistake already told is no news.
+            return context.diagnostics.take();
+        }
         faults
             .into_iter()
             .map(|fault| {

@@ -10,9 +10,8 @@ use super::keys::{KINDS, PROFILES, PartKind, SLIT_PLANES, holds};
 use super::medium::{read_index, read_medium};
 use super::mirror::read_mirror;
 use super::slab::read_slab;
-use crate::cavity::{Element, Index, Opening, Origin, Part, Slot};
+use crate::cavity::{Element, Index, Opening, Part, Slot};
 use crate::optics::{PerPlane, Plane};
-use crate::quantity::Spread;
 
 /// Whether a kind of part knows a key.
 pub(super) fn knows(kind: &str, key: &str) -> bool {
@@ -25,11 +24,10 @@ pub(super) fn knows(kind: &str, key: &str) -> bool {
 fn kind_meant(word: &str) -> Option<&'static str> {
     Some(match word {
         "crystal" | "rod" | "plate" | "window" | "etalon" | "medium" | "block" | "glass" => "slab",
-        "space" | "drift" | "distance" | "air" | "propagation" | "free_space" => "gap",
+        "space" | "distance" | "air" | "propagation" => "gap",
         "coupler" | "reflector" | "flat" | "end" => "mirror",
         "iris" | "pinhole" | "slit" | "stop" => "aperture",
         "grin" | "fiber" | "fibre" => "duct",
-        "abcd" => "matrix",
         other => nearest(other, KINDS.map(|kind| kind.name))?,
     })
 }
@@ -252,12 +250,7 @@ fn read_name(fields: &Fields<'_, '_>, kind: &str) -> Option<String> {
 /// A number that must be there, entered into the address book.
 pub(super) fn required(fields: &Fields<'_, '_>, key: &'static str, what: &str) -> Option<Slot> {
     if !fields.has(key) {
-        // A tied number may be left out: its value follows.
-        if fields.context.is_tied(&fields.address(key)) {
-            return Some(fields.enter(key, 0.0, Spread::Exact, Origin::Tied));
-        }
         fields.missing(key, what);
-        return None;
     }
     fields.slot(key)
 }

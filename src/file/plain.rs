@@ -1,6 +1,8 @@
 //! What a file may say already although nothing computes with it yet: its values are read and
 //! checked, so that a file is right once and for all.
 
+use std::collections::HashSet;
+
 use toml::de::{DeTable, DeValue};
 
 use super::context::{Context, in_order, shown};
@@ -8,11 +10,11 @@ use super::fields::Fields;
 use super::keys::{Holds, POLARISATIONS, SHAPES, SOURCE, TOLERANCE};
 use super::limits::read_order;
 use super::parts::read_part;
-use crate::cavity::{Cavity, Index};
+use crate::cavity::{Cavity, Index, Part};
 use crate::quantity::Kind;
 
 /// Reads what the top level holds for later work.
-pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
+pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index, path: &[Part]) {
     let context = fields.context;
     fields.text("title");
     fields.text("notes");
@@ -47,8 +49,18 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index) {
         }
     }
     if let Some(feed) = fields.list("feed", "list the optics between source and input mirror") {
-        for part in feed {
-            read_part(context, part, None, ambient, None);
+        let mut taken: HashSet<String> = path.iter().map(|part| part.name.clone()).collect();
+        for value in feed {
+            let Some(part) = read_part(context, value, None, ambient, None) else {
+                continue;
+            };
+            if let Some(name) = taken.replace(part.name) {
+                context.report(
+                    Some(context.place(value.span())),
+                    format!("two parts are named \"{name}\""),
+                    "give every part a name of its own, in the feed and in the path",
+                );
+            }
         }
     }
     if let Some((table, _)) = fields.table("tolerance", "write it like { shape = \"rectangular\" }")

@@ -5,7 +5,9 @@ use super::keys::THERMAL_PLACES;
 use super::medium::read_slab_medium;
 use super::mirror::read_side;
 use super::parts::{read_pair, required};
-use crate::cavity::{Element, Incidence, Side, Slab, SlabLoss, ThermalLens, ThermalPlace};
+use crate::cavity::{
+    Cavity, Element, Incidence, Origin, Side, Slab, SlabLoss, ThermalLens, ThermalPlace,
+};
 use crate::quantity::{Kind, Value};
 
 pub(super) fn read_slab(fields: &Fields<'_, '_>) -> Option<Element> {
@@ -67,7 +69,7 @@ fn read_incidence(fields: &Fields<'_, '_>) -> Incidence {
 fn read_thermal(fields: &Fields<'_, '_>) -> Option<ThermalLens> {
     let pair = |keys: [&'static str; 3]| {
         keys.iter()
-            .any(|key| fields.has(key) || fields.context.is_tied(&fields.address(key)))
+            .any(|key| fields.has(key))
             .then(|| read_pair(fields, keys, "a slab"))
             .flatten()
     };
@@ -83,6 +85,20 @@ fn read_thermal(fields: &Fields<'_, '_>) -> Option<ThermalLens> {
         Some(3) => ThermalPlace::Exit,
         _ => ThermalPlace::Spread,
     };
+    let pump = Cavity::PUMP;
+    if power_per_watt.is_some()
+        && fields.context.book.borrow().entry(pump).origin == Origin::Implied
+        && !fields.context.is_tied("pump")
+    {
+        let key = ["thermal_per_watt", "thermal_per_watt_tangential"]
+            .into_iter()
+            .find(|key| fields.has(key));
+        fields.report(
+            Some(fields.place_of(key.unwrap_or("thermal_per_watt"))),
+            "a lens per watt needs the watts, and the file gives no `pump`",
+            "add pump = \"10 W\" at the top of the file",
+        );
+    }
     if power.is_none() && power_per_watt.is_none() {
         return None;
     }

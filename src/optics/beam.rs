@@ -80,7 +80,8 @@ impl<T: Real> Beam<T> {
 
     /// Wavefront curvature 1/R in a medium of the given index, in 1/m; diverging is positive.
     pub fn wavefront_curvature(self, index: T) -> T {
-        -self.alpha / (self.beta * index)
+        // Adding zero keeps a plane wavefront from being −0.
+        -self.alpha / (self.beta * index) + 0.0
     }
 
     /// Radius of the waist, here or elsewhere, in metres.

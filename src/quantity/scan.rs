@@ -261,7 +261,7 @@ impl<'a> Scanner<'a> {
             ))
         } else {
             error("decimals follow a point here, not a comma")
-                .help(format!("write \"{}\"", written.replace(',', ".")))
+                .help(format!("write {} for {written}", written.replace(',', ".")))
         }
     }
 

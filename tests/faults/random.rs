@@ -9,7 +9,10 @@ fn config() -> ProptestConfig {
     const USUAL: u32 = 1500;
     let asked = std::env::var("PROPTEST_CASES").ok();
     let cases = asked.and_then(|count| count.parse().ok()).unwrap_or(USUAL);
-    ProptestConfig::with_cases(cases)
+    ProptestConfig {
+        failure_persistence: None,
+        ..ProptestConfig::with_cases(cases)
+    }
 }
 
 proptest! {

@@ -4,6 +4,7 @@
 mod crystal_face;
 mod lanes;
 mod mode;
+mod parts;
 mod ranges;
 mod second_road;
 mod second_type;

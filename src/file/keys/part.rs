@@ -145,12 +145,12 @@ const MIRROR: [Key; 26] = [
     quantity(
         "width",
         Kind::Length,
-        "Size in the plane of incidence of a rectangular mirror",
+        "Horizontal size of a rectangular mirror, in the carried frame",
     ),
     quantity(
         "height",
         Kind::Length,
-        "Size square to the plane of incidence of a rectangular mirror",
+        "Vertical size of a rectangular mirror, in the carried frame",
     ),
     quantity(
         "clear",
@@ -295,12 +295,12 @@ const SLAB: [Key; 25] = [
     quantity(
         "width",
         Kind::Length,
-        "Size in the tangential plane of a rectangular slab",
+        "Horizontal size of a rectangular slab, in the carried frame",
     ),
     quantity(
         "height",
         Kind::Length,
-        "Size in the sagittal plane of a rectangular slab",
+        "Vertical size of a rectangular slab, in the carried frame",
     ),
     quantity(
         "clear",

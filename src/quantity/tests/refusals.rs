@@ -32,7 +32,7 @@ fn refusals_name_what_was_found_and_the_way_out() {
         ("5 MM", Length, "\"MM\" is not a unit", "write mm"),
         ("5 micron", Length, "not a unit", "write um"),
         ("5 furlong", Length, "not a unit", "µm, nm or in"),
-        ("100,5 mm", Length, "point", "\"100.5\""),
+        ("100,5 mm", Length, "point", "write 100.5 for 100,5"),
         ("1,000 mm", Length, "thousands", "\"1000\" or \"1.000\""),
         ("1,000,000 mm", Length, "group", "\"1000000\""),
         ("100 200 mm", Length, "side by side", "together"),

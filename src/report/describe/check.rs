@@ -1,6 +1,7 @@
 //! `check` for people: the verdict first, then the beam, then how far everything may move.
 
 use crate::analysis::check::{Check, Leaving, LimitCheck, Range, Station, Waist};
+use crate::analysis::eigenmode::EDGE;
 use crate::analysis::ranges::{End, Range as Found};
 use crate::cavity::{Bounds, Presence};
 use crate::optics::Plane;
@@ -67,23 +68,27 @@ fn verdict(document: &mut Document, check: &Check) {
         let tone = if failing == 0 { Tone::Good } else { Tone::Bad };
         (word, format!("margin {}{limits}", margins.join(", ")), tone)
     } else if check.on_edge {
-        let reason = PLANES
+        let reasons: Vec<(&str, &str)> = PLANES
             .iter()
             .filter_map(|(name, plane)| {
                 let plane = check.planes.get(*plane);
-                let why = plane
-                    .why
-                    .as_deref()
-                    .filter(|_| plane.margin.abs() <= 1e-10)?;
-                Some(format!("{name}: {why}"))
+                let is_on_edge = plane.margin.abs() <= EDGE;
+                Some((*name, plane.why.as_deref().filter(|_| is_on_edge)?))
             })
-            .collect::<Vec<_>>()
-            .join("; ");
+            .collect();
+        let reason = match reasons[..] {
+            [(_, one), (_, other)] if one == other => format!("both planes: {one}"),
+            _ => reasons
+                .iter()
+                .map(|(name, why)| format!("{name}: {why}"))
+                .collect::<Vec<_>>()
+                .join("; "),
+        };
         ("ON THE EDGE OF STABILITY", reason, Tone::Bad)
     } else {
         let beyond: Vec<String> = PLANES
             .iter()
-            .filter(|(_, plane)| check.planes.get(*plane).margin < -1e-10)
+            .filter(|(_, plane)| check.planes.get(*plane).margin < -EDGE)
             .map(|(name, plane)| {
                 let by = significant(-check.planes.get(*plane).margin, 3);
                 format!("{name} plane by {by} in the half-trace")
@@ -157,6 +162,7 @@ fn optics(document: &mut Document, stations: &[Station]) {
         &LENGTHS,
         1.0,
     );
+    let has_inside = shown.iter().any(|station| station.face.is_some());
     let clips = shown.iter().any(|station| station.clip_loss.is_some());
     let oblique = shown.iter().any(|station| {
         let spots = station.tangential.zip(station.sagittal);
@@ -211,6 +217,12 @@ fn optics(document: &mut Document, stations: &[Station]) {
         table.rows.push(row);
     }
     document.push(Block::Table(table));
+    if has_inside {
+        document.text(
+            "  An entry is seen just outside its part, an exit just inside; at a tilted face the \
+             tangential radius changes between them.",
+        );
+    }
 }
 
 /// Decimals that show a few micrometres in millimetres.
@@ -419,7 +431,12 @@ fn room(range: &Range) -> String {
         return "–".into();
     };
     let nominal = range.found.nominal;
+    let is_radius = matches!(range.kind, Kind::Radius | Kind::Face | Kind::Focal);
     let multiple = |end: End| match end {
+        // A tolerance of a radius never leads past flat.
+        End::Edge { at, .. } if is_radius && nominal != 0.0 => {
+            (at * nominal > 0.0).then(|| (1.0 / at - 1.0 / nominal).abs() / tolerance)
+        }
         End::Edge { at, .. } => Some((at - nominal).abs() / tolerance),
         _ => None,
     };
@@ -482,6 +499,10 @@ fn way_back(document: &mut Document, ranges: &[Range]) {
 
 /// A change of a quantity, signed, in its unit.
 fn change(from: f64, to: f64, kind: Kind) -> String {
+    if (to - from).abs() <= 1e-9 * from.abs() {
+        // It stands on the edge.
+        return "any".into();
+    }
     let signed = |x: f64, unit: &str| {
         let plus = if x > 0.0 { "+" } else { "" };
         format!("{plus}{} {unit}", significant(x, 3))

@@ -3,7 +3,7 @@
 use clap::Args;
 
 use super::picture::Target;
-use super::{Answer, CavityFile, FAULT, FINE, NO, input};
+use super::{Answer, CavityFile, FINE, NO, input, output};
 use crate::analysis;
 use crate::analysis::profile::Profile;
 use crate::report::{describe, render};
@@ -25,6 +25,9 @@ pub(super) struct Typed {
     /// Draw the beam along the path, as .svg or .png by the ending of the name
     #[arg(long, value_name = "PATH")]
     plot: Option<std::path::PathBuf>,
+    /// Write the beam at every part as comma-separated values, SI units
+    #[arg(long, value_name = "PATH")]
+    csv: Option<std::path::PathBuf>,
 }
 
 pub(super) fn run(typed: &Typed) -> Answer {
@@ -42,6 +45,17 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         let profile = Profile::of(cavity, &cavity.book().nominal());
         target.write(&describe::envelope(&check, &profile))?;
     }
+    if let Some(path) = &typed.csv {
+        let table = render::csv::stations(&check)
+            .map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
+        output::write_whole(path, &table).map_err(|error| {
+            let path = path.display().to_string();
+            Answer::wrong(format!(
+                "error: cannot write the table {}: {error}\n",
+                path.escape_debug()
+            ))
+        })?;
+    }
     let good = check.stable && check.limits.iter().all(|limit| limit.holds);
     let status = if good { FINE } else { NO };
     let name = typed.cavity.file.display().to_string();
@@ -49,11 +63,9 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         match render::json::render("check", &name, &check) {
             Ok(json) => json + "\n",
             Err(error) => {
-                return Err(Answer {
-                    out: String::new(),
-                    err: format!("error: the result does not fit into JSON: {error}\n"),
-                    status: FAULT,
-                });
+                return Err(Answer::fault(format!(
+                    "the result does not fit into JSON: {error}"
+                )));
             }
         }
     } else {

@@ -8,6 +8,7 @@ mod input;
 mod manual;
 mod materials;
 mod new;
+mod output;
 mod picture;
 mod schema;
 
@@ -111,6 +112,14 @@ impl Answer {
         }
     }
 
+    fn fault(what: String) -> Answer {
+        Answer {
+            out: String::new(),
+            err: format!("error: {what}\n"),
+            status: FAULT,
+        }
+    }
+
     fn wrong(err: String) -> Answer {
         Answer {
             out: String::new(),
@@ -132,11 +141,7 @@ fn finish<R: Serialize>(
     }
     match render::json::render_bare(command, result) {
         Ok(text) => Answer::fine(text + "\n"),
-        Err(error) => Answer {
-            out: String::new(),
-            err: format!("error: the result does not fit into JSON: {error}\n"),
-            status: FAULT,
-        },
+        Err(error) => Answer::fault(format!("the result does not fit into JSON: {error}")),
     }
 }
 

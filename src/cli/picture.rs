@@ -1,9 +1,8 @@
 //! Writing a picture to disk: whole or not at all.
 
-use std::io::{ErrorKind, Write};
 use std::path::{Path, PathBuf};
 
-use super::{Answer, FAULT, WRONG_INPUT};
+use super::{Answer, FAULT, WRONG_INPUT, output};
 use crate::report::figure::Figure;
 use crate::report::render::plot;
 
@@ -63,43 +62,9 @@ impl Target {
             err: format!("error: the picture cannot be painted: {error}\n"),
             status: FAULT,
         })?;
-        self.put(&bytes)
+        output::write_whole(&self.path, &bytes)
             .map_err(|error| refuse(&self.path, &error.to_string()))
     }
-
-    /// Writes beside the target and renames, so that a reader never meets half a picture.
-    fn put(&self, bytes: &[u8]) -> std::io::Result<()> {
-        if self.path.is_dir() {
-            return Err(std::io::Error::other("this is a folder"));
-        }
-        let folder = match self.path.parent() {
-            Some(folder) if folder != Path::new("") => folder,
-            _ => Path::new("."),
-        };
-        let mut builder = tempfile::Builder::new();
-        builder.prefix(".modewright-");
-        #[cfg(unix)]
-        {
-            // As any other file: the user's mask decides, instead of "for nobody else".
-            use std::os::unix::fs::PermissionsExt;
-            builder.permissions(std::fs::Permissions::from_mode(0o666));
-        }
-        let mut file = builder.tempfile_in(folder).map_err(|error| plain(&error))?;
-        file.write_all(bytes)?;
-        file.flush()?;
-        file.persist(&self.path)
-            .map_err(|error| plain(&error.error))?;
-        Ok(())
-    }
-}
-
-/// The error in words that do not speak of the temporary file.
-fn plain(error: &std::io::Error) -> std::io::Error {
-    std::io::Error::other(match error.kind() {
-        ErrorKind::NotFound => "its folder does not exist".into(),
-        ErrorKind::PermissionDenied => "its folder may not be written to".into(),
-        kind => kind.to_string(),
-    })
 }
 
 fn refuse(path: &Path, why: &str) -> Answer {

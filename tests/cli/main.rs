@@ -1,5 +1,6 @@
 //! The program as its users run it.
 
+mod csv;
 mod manual;
 mod materials;
 mod new;

@@ -2,7 +2,7 @@
 
 #![no_main]
 
-#[allow(dead_code)]
+#[allow(dead_code, reason = "this target uses a part of the shared grammar")]
 #[path = "../../faults/grammar.rs"]
 mod grammar;
 

@@ -61,19 +61,26 @@ fn one_core(bencher: Bencher, count: usize) {
         .map(Lanes::constant)
         .collect();
     let nominal = cavity.book().nominal();
+    let inputs: Vec<[Lanes; VARIED.len()]> = (0..BLOCKS)
+        .map(|block| {
+            std::array::from_fn(|k| {
+                let at = nominal[varied[k].index()];
+                Lanes(std::array::from_fn(|lane| {
+                    at * (1.0 + 1e-5 * ((block * 7 + lane * 3 + k) % 17) as f64)
+                }))
+            })
+        })
+        .collect();
     let mut workspace = Workspace::default();
     bencher
         .counter(ItemsCount::new(BLOCKS * LANES))
         .bench_local(|| {
             let mut sum = Lanes::constant(0.0);
-            for block in 0..BLOCKS {
-                for (k, slot) in varied.iter().enumerate() {
-                    let at = nominal[slot.index()];
-                    values[slot.index()] = Lanes(std::array::from_fn(|lane| {
-                        at * (1.0 + 1e-5 * ((block * 7 + lane * 3 + k) % 17) as f64)
-                    }));
+            for input in black_box(&inputs) {
+                for (slot, lanes) in varied.iter().zip(input) {
+                    values[slot.index()] = *lanes;
                 }
-                evaluator.evaluate(black_box(&values), &mut workspace, |_, value, _| {
+                evaluator.evaluate(&values, &mut workspace, |_, value, _| {
                     sum = sum + value;
                 });
             }

@@ -6,7 +6,7 @@
 
 use std::f64::consts::PI;
 
-use crate::cavity::{Cavity, Element, Form, SlabLoss, slab_crossing};
+use crate::cavity::{Cavity, Element, Form, SlabLoss, Slot, slab_crossing};
 use crate::numeric::Real;
 
 /// −ln ρ² = the sum of −ln of all power factors of one round trip; zero where nothing is lost.
@@ -45,6 +45,30 @@ pub fn round_trip_attenuation<T: Real>(cavity: &Cavity, values: &[T]) -> T {
         sum = sum + attenuation * passes;
     }
     sum
+}
+
+/// The slots on which the attenuation depends.
+pub fn loss_slots(cavity: &Cavity) -> Vec<Slot> {
+    let mut slots = Vec::new();
+    for part in cavity.parts() {
+        match &part.element {
+            Element::Mirror(mirror) => {
+                let coating = mirror.coating(part.swapped, cavity.polarisation);
+                slots.extend([coating.reflectance, coating.transmission, coating.loss]);
+            }
+            Element::Lens { loss, .. } => slots.push(*loss),
+            Element::Slab(slab) => match slab.loss {
+                None => {}
+                Some(SlabLoss::PerPass(loss)) => slots.push(Some(loss)),
+                Some(SlabLoss::PerLength(alpha)) => {
+                    slots.push(Some(alpha));
+                    slots.extend(part.ray_slots().into_iter().map(Some));
+                }
+            },
+            _ => {}
+        }
+    }
+    slots.into_iter().flatten().collect()
 }
 
 /// The finesse π√ρ/(1 − ρ) from −ln ρ², and whether it exists: without losses it does not.

@@ -25,6 +25,8 @@ pub struct Evaluator<'c> {
     watched: Vec<Option<usize>>,
     records: usize,
     segments: Vec<Segment>,
+    /// −ln of the power left by a round trip, where nothing of it varies.
+    attenuation: Option<f64>,
 }
 
 /// A piece of the walk.
@@ -87,6 +89,7 @@ impl<'c> Evaluator<'c> {
             watched,
             records,
             segments,
+            attenuation: None,
         }
     }
 
@@ -101,6 +104,11 @@ impl<'c> Evaluator<'c> {
                 moves.push(tie.target);
             }
         }
+        let loses_otherwise = airy::loss_slots(self.cavity)
+            .iter()
+            .any(|slot| moves.contains(slot));
+        self.attenuation =
+            (!loses_otherwise).then(|| airy::round_trip_attenuation(self.cavity, &nominal));
         let keeps_phase = self.measures.iter().any(|m| matches!(m, Measure::Gouy(_)));
         let mut segments: Vec<Segment> = Vec::new();
         for segment in std::mem::take(&mut self.segments) {
@@ -149,6 +157,7 @@ impl<'c> Evaluator<'c> {
             wavelength: Cavity::WAVELENGTH.of(values),
             watched: &self.watched,
             records: &workspace.records,
+            attenuation: self.attenuation,
             modes: &modes,
         };
         for (index, measure) in self.measures.iter().enumerate() {
@@ -234,6 +243,7 @@ struct Evaluation<'a, T: Real> {
     wavelength: T,
     watched: &'a [Option<usize>],
     records: &'a [Record<T>],
+    attenuation: Option<f64>,
     modes: &'a PerPlane<PlaneMode<T>>,
 }
 
@@ -392,7 +402,10 @@ impl<T: Real> Evaluation<'_, T> {
     }
 
     fn finesse(&self) -> (T, T::Mask) {
-        airy::finesse(airy::round_trip_attenuation(self.cavity, self.values))
+        airy::finesse(match self.attenuation {
+            Some(fixed) => T::constant(fixed),
+            None => airy::round_trip_attenuation(self.cavity, self.values),
+        })
     }
 
     #[inline(always)]

@@ -69,7 +69,13 @@ impl<T: Real> Leg<T> {
     pub fn after(&self, before: PerPlane<RayMatrix<T>>) -> PerPlane<RayMatrix<T>> {
         match self.piece {
             Piece::Kick(c) => before.zip(c, RayMatrix::kicked),
-            Piece::Stretch(stretch) => before.zip(stretch, |m, stretch| stretch.after(m)),
+            Piece::Stretch(stretch) => match stretch.tangential.strength_squared {
+                None => {
+                    let reduced = stretch.tangential.length / stretch.tangential.index;
+                    before.map(|m| m.propagated(reduced))
+                }
+                Some(_) => before.zip(stretch, |m, stretch| stretch.after(m)),
+            },
             Piece::Face(_, m) | Piece::Given(m) => before.zip(m, RayMatrix::then),
             Piece::Opening => before,
         }

@@ -48,7 +48,10 @@ pub fn find(name: &str) -> Result<&'static Material, NotFound> {
     let mut near: Vec<(usize, &'static str)> = Vec::new();
     for material in all() {
         let names = std::iter::once(&material.name).chain(material.aliases);
-        let Some(distance) = names.map(|known| distance(&wanted, &plain(known))).min() else {
+        let Some(distance) = names
+            .map(|known| strsim::levenshtein(&wanted, &plain(known)))
+            .min()
+        else {
             continue;
         };
         if distance == 0 {
@@ -143,22 +146,4 @@ fn plain(name: &str) -> String {
         .filter(|c| c.is_alphanumeric())
         .flat_map(char::to_lowercase)
         .collect()
-}
-
-/// The least number of letters to insert, delete or replace (Levenshtein, Sov. Phys. Dokl. 10,
-/// 707 (1966)), one row of the table at a time.
-fn distance(a: &str, b: &str) -> usize {
-    let b: Vec<char> = b.chars().collect();
-    let mut row: Vec<usize> = (0..=b.len()).collect();
-    for (i, letter) in a.chars().enumerate() {
-        let mut next = vec![i + 1];
-        let mut left = i + 1;
-        for ((&other, &above), &corner) in b.iter().zip(row.iter().skip(1)).zip(&row) {
-            let replace = corner + usize::from(letter != other);
-            left = replace.min(above + 1).min(left + 1);
-            next.push(left);
-        }
-        row = next;
-    }
-    row.last().copied().unwrap_or(0)
 }

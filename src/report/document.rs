@@ -118,6 +118,15 @@ impl Document {
         self.push(Block::Heading(text.into()));
     }
 
+    /// Adds a remark below a table.
+    pub fn aside(&mut self, text: impl Into<String>) {
+        self.push(Block::Item {
+            mark: " ".into(),
+            text: text.into(),
+            tone: Tone::Plain,
+        });
+    }
+
     /// Adds running text.
     pub fn text(&mut self, text: impl Into<String>) {
         self.push(Block::Text(text.into()));

@@ -4,7 +4,7 @@
 use std::fmt::Write;
 
 use modewright::analysis;
-use modewright::file::{self, Loaded};
+use modewright::file::{self, Loaded, Refused};
 use modewright::report::{describe, render};
 
 /// Bytes as a stream of decisions; zeros when they run out.
@@ -414,24 +414,33 @@ pub fn cavity_text(bytes: &[u8]) -> String {
     text
 }
 
-/// Reads a text; where it is refused, the refusal is fit to be shown.
-pub fn examine_load(text: &str) -> Option<Loaded> {
-    match file::load("any.toml", text, &[]) {
-        Ok(loaded) => Some(loaded),
-        Err(refused) => {
-            assert!(!refused.diagnostics.is_empty());
-            for diagnostic in &refused.diagnostics {
-                assert!(!diagnostic.message.is_empty());
-                if let Some(place) = &diagnostic.place {
-                    let source = &refused.sources[place.source].text;
-                    assert!(place.span.start <= place.span.end);
-                    assert!(place.span.end <= source.len());
-                }
+/// Reads a text; where it is refused, every finding says something and points into the text.
+pub fn judged(text: &str) -> Result<Loaded, Refused> {
+    let result = file::load("any.toml", text, &[]);
+    if let Err(refused) = &result {
+        assert!(!refused.diagnostics.is_empty());
+        for diagnostic in &refused.diagnostics {
+            assert!(!diagnostic.message.is_empty());
+            if let Some(place) = &diagnostic.place {
+                let source = &refused.sources[place.source].text;
+                assert!(place.span.start <= place.span.end);
+                assert!(place.span.end <= source.len());
             }
-            render::diagnostics::render(&refused.diagnostics, &refused.sources);
-            None
         }
     }
+    result
+}
+
+/// Shows a refusal, as the command line would.
+pub fn show(refused: &Refused) -> String {
+    render::diagnostics::render(&refused.diagnostics, &refused.sources)
+}
+
+/// Reads a text; where it is refused, the refusal is fit to be shown.
+pub fn examine_load(text: &str) -> Option<Loaded> {
+    judged(text)
+        .inspect_err(|refused| assert!(!show(refused).is_empty()))
+        .ok()
 }
 
 /// Reads a text and, where it is a cavity, checks it: every number is one, and what has none says

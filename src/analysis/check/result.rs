@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-use crate::analysis::ranges::QuantityRange;
+use crate::analysis::ranges::{End, QuantityRange};
 use crate::optics::{PerPlane, Plane};
 use crate::quantity::Kind;
 
@@ -232,6 +232,26 @@ pub struct Range {
     /// How the quantity is written.
     #[serde(skip)]
     pub kind: Kind,
+}
+
+impl Range {
+    /// Distance from the nominal value to the nearer edge, in tolerances; infinite where there is
+    /// no edge that a tolerance could reach, none where there is no tolerance.
+    pub fn room(&self) -> Option<f64> {
+        let (tolerance, range) = (self.tolerance?, self.found.range?);
+        let nominal = self.found.nominal;
+        let is_radius = matches!(self.kind, Kind::Radius | Kind::Face | Kind::Focal);
+        let multiple = |end: End| match end {
+            // A tolerance of a radius never leads past flat.
+            End::Edge { at, .. } if is_radius && nominal != 0.0 => {
+                (at * nominal > 0.0).then(|| (1.0 / at - 1.0 / nominal).abs() / tolerance)
+            }
+            End::Edge { at, .. } => Some((at - nominal).abs() / tolerance),
+            _ => None,
+        };
+        let edges = [multiple(range.from), multiple(range.to)];
+        Some(edges.into_iter().flatten().fold(f64::INFINITY, f64::min))
+    }
 }
 
 /// A limit and whether it holds.

@@ -218,8 +218,8 @@ fn optics(document: &mut Document, stations: &[Station]) {
     }
     document.push(Block::Table(table));
     if has_inside {
-        document.text(
-            "  An entry is seen just outside its part, an exit just inside; at a tilted face the \
+        document.aside(
+            "An entry is seen just outside its part, an exit just inside; at a tilted face the \
              tangential radius changes between them.",
         );
     }
@@ -427,27 +427,10 @@ fn beyond_flat(at: f64, range: &Range) -> String {
 
 /// Distances to the two ends in multiples of the tolerance.
 fn room(range: &Range) -> String {
-    let (Some(tolerance), Some(found)) = (range.tolerance, range.found.range) else {
-        return "–".into();
-    };
-    let nominal = range.found.nominal;
-    let is_radius = matches!(range.kind, Kind::Radius | Kind::Face | Kind::Focal);
-    let multiple = |end: End| match end {
-        // A tolerance of a radius never leads past flat.
-        End::Edge { at, .. } if is_radius && nominal != 0.0 => {
-            (at * nominal > 0.0).then(|| (1.0 / at - 1.0 / nominal).abs() / tolerance)
-        }
-        End::Edge { at, .. } => Some((at - nominal).abs() / tolerance),
-        _ => None,
-    };
-    let nearest = [multiple(found.from), multiple(found.to)]
-        .into_iter()
-        .flatten()
-        .fold(f64::INFINITY, f64::min);
-    if nearest.is_finite() {
-        significant(nearest, 2)
-    } else {
-        "any".into()
+    match range.room() {
+        None => "–".into(),
+        Some(room) if room.is_finite() => significant(room, 2),
+        Some(_) => "any".into(),
     }
 }
 
@@ -545,8 +528,8 @@ fn round_trip(document: &mut Document, check: &Check) {
     document.push(Block::Table(phases));
     document.push(Block::Table(matrices));
     let trip = &check.round_trip;
-    document.text(format!(
-        "  {} reflections; {} geometric, {} optical, {} group",
+    document.aside(format!(
+        "{} reflections; {} geometric, {} optical, {} group",
         trip.reflections,
         length_to(trip.length_m, 6),
         length_to(trip.optical_m, 6),

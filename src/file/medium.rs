@@ -7,7 +7,7 @@ use super::reach::GREATEST_INDEX;
 use crate::cavity::{Cavity, Index, Slot};
 use crate::diagnostic::Place;
 use crate::optics::material::{self, AxisError};
-use crate::quantity::Kind;
+use crate::quantity::{Kind, Spread};
 
 /// The medium of a gap, of a substrate or of the surroundings.
 pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: Index) -> Index {
@@ -28,6 +28,14 @@ pub(super) fn read_medium(fields: &Fields<'_, '_>, key: &'static str, ambient: I
     let Some(quantity) = fields.context.quantity(key, &found, Kind::Number) else {
         return ambient;
     };
+    if quantity.spread != Spread::Exact {
+        fields.report(
+            Some(found.place),
+            format!("a spread of `{key}` is not available yet"),
+            "write the index alone; a slab's `index` may have a spread",
+        );
+        return ambient;
+    }
     match quantity.value.number() {
         Some(index) if (1.0..=GREATEST_INDEX).contains(&index) => Index::Fixed {
             phase: index,

@@ -1,8 +1,7 @@
 //! modewright: is a laser or optical cavity stable with the parts you will really get, how large is
 //! the beam on every optic, and what comes out?
 //!
-//! A cavity is read from a text, or assembled from [`cavity::Draft`]; every analysis takes it and
-//! returns a plain result in SI units.
+//! A cavity is read from a text; every analysis takes it and returns a plain result in SI units.
 //!
 //! ```
 //! use modewright::{analysis, file};

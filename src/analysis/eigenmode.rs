@@ -106,13 +106,6 @@ impl<T: Real> PlaneMode<T> {
     }
 }
 
-/// The modes of both planes with the given values in the address book's slots.
-pub fn modes<T: Real>(cavity: &Cavity, values: &[T]) -> PerPlane<PlaneMode<T>> {
-    cavity
-        .one_way(values)
-        .map(|way| PlaneMode::of(cavity.form(), way))
-}
-
 /// Whether a plane holds a mode.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Stability {

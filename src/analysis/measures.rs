@@ -64,10 +64,6 @@ impl<T> Default for Workspace<T> {
     }
 }
 
-/// The mode behind a set of measures.
-#[derive(Clone, Copy, Debug)]
-pub struct Modes<T: Real>(pub PerPlane<PlaneMode<T>>);
-
 impl<'c> Evaluator<'c> {
     /// Prepares the evaluation of some measures.
     pub fn new(cavity: &'c Cavity, measures: Vec<Measure>) -> Self {
@@ -147,7 +143,7 @@ impl<'c> Evaluator<'c> {
         values: &[T],
         workspace: &mut Workspace<T>,
         mut take: impl FnMut(usize, T, T::Mask),
-    ) -> Modes<T> {
+    ) -> PerPlane<PlaneMode<T>> {
         let way = self.one_way(values, workspace);
         let form = self.cavity.form();
         let modes = way.map(|way| PlaneMode::of(form, way));
@@ -164,7 +160,7 @@ impl<'c> Evaluator<'c> {
             let (value, exists) = evaluation.measure(*measure);
             take(index, value, exists);
         }
-        Modes(modes)
+        modes
     }
 
     /// The product of all ray matrices of one walk along the path.

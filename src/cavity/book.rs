@@ -130,11 +130,6 @@ impl Book {
         &self.entries[slot.0]
     }
 
-    /// The entry in a slot, to change it.
-    pub fn entry_mut(&mut self, slot: Slot) -> &mut Entry {
-        &mut self.entries[slot.0]
-    }
-
     /// All slots with their entries, in the order of the file.
     pub fn iter(&self) -> impl Iterator<Item = (Slot, &Entry)> {
         self.entries.iter().enumerate().map(|(i, e)| (Slot(i), e))

@@ -24,9 +24,9 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-use crate::cavity::{Book, Cavity, Draft, Form, Index, Origin, Polarisation, Slot};
+use crate::cavity::{Cavity, Draft, Form, Index, Polarisation};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
-use crate::quantity::{self, Kind, QuantityError, Spread};
+use crate::quantity::{self, Kind, QuantityError};
 pub(crate) use context::nearest;
 use context::{Context, Override, in_order, shown, with_article};
 use fields::Fields;
@@ -480,37 +480,4 @@ fn key_span(top: &DeTable<'_>, key: &str) -> Range<usize> {
     top.iter()
         .find(|(name, _)| &**name.get_ref() == key)
         .map_or(0..0, |(name, _)| name.span())
-}
-
-impl Loaded {
-    /// The place where the number in a slot was written, if it was.
-    pub fn place(&self, slot: Slot) -> Option<&Place> {
-        self.places.get(&self.cavity.book().entry(slot).address)
-    }
-}
-
-/// A book with the three numbers every cavity has, for cavities that are not read from a file.
-pub fn global_book(wavelength: f64) -> Book {
-    let mut book = Book::default();
-    for (key, kind, value, origin) in [
-        ("wavelength", Kind::Length, wavelength, Origin::Written),
-        (
-            "temperature",
-            Kind::Temperature,
-            ROOM_TEMPERATURE,
-            Origin::Implied,
-        ),
-        ("pump", Kind::Power, 0.0, Origin::Implied),
-    ] {
-        book.enter(crate::cavity::Entry {
-            address: key.into(),
-            part: None,
-            key,
-            kind,
-            value,
-            spread: Spread::Exact,
-            origin,
-        });
-    }
-    book
 }

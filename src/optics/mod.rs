@@ -29,14 +29,6 @@ impl Plane {
             Plane::Sagittal => "sagittal",
         }
     }
-
-    /// The other plane.
-    pub fn other(self) -> Plane {
-        match self {
-            Plane::Tangential => Plane::Sagittal,
-            Plane::Sagittal => Plane::Tangential,
-        }
-    }
 }
 
 /// One value for each plane.

@@ -25,6 +25,12 @@ pub const LENGTHS: [Scale; 5] = [
 /// Units of angles, smallest first.
 pub const ANGLES: [Scale; 3] = [scale("µrad", 1e-6), scale("mrad", 1e-3), scale("rad", 1.0)];
 
+/// In SI units, what is rounding and not a size: less than any length or angle in a cavity.
+pub const NOTHING: f64 = 1e-13;
+
+/// In SI units, a size to choose a unit by where there is none: millimetres, milliradians.
+const USUAL: f64 = 1e-2;
+
 /// The largest unit in which the middle one of the values is at least `least`.
 ///
 /// The middle one, so that a single distant waist does not turn a column of millimetres into
@@ -33,10 +39,10 @@ pub fn common(values: impl IntoIterator<Item = f64>, scales: &[Scale], least: f6
     let mut sizes: Vec<f64> = values
         .into_iter()
         .map(f64::abs)
-        .filter(|x| *x > 0.0 && x.is_finite())
+        .filter(|x| *x > NOTHING && x.is_finite())
         .collect();
     sizes.sort_by(f64::total_cmp);
-    let middle = sizes.get(sizes.len() / 2).copied().unwrap_or(1.0);
+    let middle = sizes.get(sizes.len() / 2).copied().unwrap_or(USUAL);
     scales
         .iter()
         .rev()
@@ -106,6 +112,6 @@ mod tests {
     fn a_column_takes_the_unit_of_its_middle() {
         assert_eq!(common([2e-4, 3e-5, 4e-4], &LENGTHS, 1.0).symbol, "µm");
         assert_eq!(common([0.08, 0.02, 1200.0], &LENGTHS, 1.0).symbol, "mm");
-        assert_eq!(common([], &LENGTHS, 1.0).symbol, "m");
+        assert_eq!(common([0.0, 1e-17], &LENGTHS, 1.0).symbol, "mm");
     }
 }

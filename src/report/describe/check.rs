@@ -7,7 +7,7 @@ use crate::cavity::{Bounds, Presence};
 use crate::optics::Plane;
 use crate::quantity::Kind;
 use crate::report::document::{Block, Document, Table, Tone};
-use crate::report::number::{ANGLES, LENGTHS, Scale, common, fixed, plain, significant};
+use crate::report::number::{ANGLES, LENGTHS, NOTHING, Scale, common, fixed, plain, significant};
 
 /// The result of a check as a document.
 pub fn describe(check: &Check) -> Document {
@@ -376,7 +376,9 @@ fn length(x: f64) -> String {
 
 /// The same with the given count of significant digits.
 fn length_to(x: f64, digits: usize) -> String {
-    if x != 0.0 && x.abs() < 1e-4 {
+    if x.abs() < NOTHING {
+        "0 mm".into()
+    } else if x.abs() < 1e-4 {
         format!("{} µm", plain(x * 1e6, digits))
     } else if x.abs() < 100.0 {
         format!("{} mm", plain(x * 1e3, digits))

@@ -60,7 +60,7 @@ pub struct Entry {
 impl Entry {
     /// Whether the value kept is the reciprocal of the one written.
     pub fn is_reciprocal(&self) -> bool {
-        matches!(self.kind, Kind::Radius | Kind::Face | Kind::Focal)
+        self.kind.is_reciprocal()
     }
 
     /// Whether moving this number alone changes the round trip of rays and the builder can move

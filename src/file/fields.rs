@@ -220,8 +220,7 @@ impl<'c, 't> Fields<'c, 't> {
             return is_tied.then(|| self.enter(key, 0.0, Spread::Exact, Origin::Tied));
         };
         let quantity = self.context.quantity(key, &found, kind)?;
-        let reciprocal = matches!(kind, Kind::Radius | Kind::Face | Kind::Focal);
-        let value = if reciprocal {
+        let value = if kind.is_reciprocal() {
             quantity.value.curvature()
         } else {
             quantity.value.number()

@@ -158,9 +158,15 @@ impl Kind {
         )
     }
 
+    /// Whether analysis works with the reciprocal of the number that is written: the curvature of a
+    /// radius, the dioptric power of a focal length, which pass through flat without a break.
+    pub fn is_reciprocal(self) -> bool {
+        matches!(self, Kind::Radius | Kind::Face | Kind::Focal)
+    }
+
     /// Whether its value is divided by somewhere.
     pub(super) fn is_never_zero(self) -> bool {
-        matches!(self, Kind::Radius | Kind::Face | Kind::Focal)
+        self.is_reciprocal()
     }
 
     /// Whether it can be flat.

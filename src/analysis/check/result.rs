@@ -240,7 +240,7 @@ impl Range {
     pub fn room(&self) -> Option<f64> {
         let (tolerance, range) = (self.tolerance?, self.found.range?);
         let nominal = self.found.nominal;
-        let is_radius = matches!(self.kind, Kind::Radius | Kind::Face | Kind::Focal);
+        let is_radius = self.kind.is_reciprocal();
         let multiple = |end: End| match end {
             // A tolerance of a radius never leads past flat.
             End::Edge { at, .. } if is_radius && nominal != 0.0 => {

@@ -456,7 +456,7 @@ fn way_back(document: &mut Document, ranges: &[Range]) {
         let Some(found) = range.found.range else {
             continue;
         };
-        let reversed = matches!(range.kind, Kind::Radius | Kind::Face | Kind::Focal);
+        let reversed = range.kind.is_reciprocal();
         let (low, high) = if reversed {
             (found.to, found.from)
         } else {

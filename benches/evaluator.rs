@@ -1,12 +1,12 @@
 //! Many cavities at a time: the bow-tie ring with its seven toleranced quantities, measured as a
 //! builder would (margin, four spots, least radius in the crystal, mode clearance to order 12).
 
+use divan::Bencher;
 use divan::counter::ItemsCount;
-use divan::{Bencher, black_box};
-use modewright::analysis::measures::{Evaluator, Workspace};
 use modewright::cavity::{Cavity, Measure, Slot};
 use modewright::file;
-use modewright::numeric::{LANES, Lanes, Real};
+use modewright::numeric::Lanes;
+use modewright::study::batch::{BLOCKS, Batch, CHUNK, Instructions};
 
 fn main() {
     divan::main();
@@ -40,50 +40,42 @@ const VARIED: [&str; 7] = [
     "M4.roc",
 ];
 
-const BLOCKS: usize = 128;
-
-#[divan::bench(args = [1, 5, 6, 7])]
-fn one_core(bencher: Bencher, count: usize) {
+fn bench(bencher: Bencher, measures: &[&str], varied: &[&str], instructions: Instructions) {
+    const CHUNKS: usize = 64;
     let cavity = ring();
-    let measures = MEASURES[..count]
+    let measures = measures
         .iter()
         .filter_map(|name| Measure::parse(name, &cavity).ok())
         .collect();
-    let varied: Vec<Slot> = VARIED
+    let varied: Vec<Slot> = varied
         .iter()
         .filter_map(|address| cavity.book().find(address))
         .collect();
-    let evaluator = Evaluator::new(&cavity, measures).varying(&varied);
-    let mut values: Vec<Lanes> = cavity
-        .book()
-        .nominal()
-        .into_iter()
-        .map(Lanes::constant)
-        .collect();
     let nominal = cavity.book().nominal();
-    let inputs: Vec<[Lanes; VARIED.len()]> = (0..BLOCKS)
-        .map(|block| {
-            std::array::from_fn(|k| {
-                let at = nominal[varied[k].index()];
-                Lanes(std::array::from_fn(|lane| {
-                    at * (1.0 + 1e-5 * ((block * 7 + lane * 3 + k) % 17) as f64)
-                }))
-            })
-        })
-        .collect();
-    let mut workspace = Workspace::default();
+    let batch = Batch::new(&cavity, measures, varied).with(instructions);
+    let mut chunk = batch.chunk();
+    let count = batch.varied().len();
+    for (k, input) in chunk.inputs.iter_mut().enumerate() {
+        let at = nominal[batch.varied()[k % count].index()];
+        *input = Lanes(std::array::from_fn(|lane| {
+            at * (1.0 + 1e-5 * ((k * 7 + lane * 3) % 17) as f64)
+        }));
+    }
     bencher
-        .counter(ItemsCount::new(BLOCKS * LANES))
+        .counter(ItemsCount::new(CHUNKS * CHUNK))
         .bench_local(|| {
-            let mut sum = Lanes::constant(0.0);
-            for input in black_box(&inputs) {
-                for (slot, lanes) in varied.iter().zip(input) {
-                    values[slot.index()] = *lanes;
-                }
-                evaluator.evaluate(&values, &mut workspace, |_, value, _| {
-                    sum = sum + value;
-                });
+            for _ in 0..CHUNKS {
+                batch.evaluate(&mut chunk, BLOCKS);
             }
-            sum
         });
+}
+
+#[divan::bench(args = [1, 5, 6, 7])]
+fn one_core_plain(bencher: Bencher, count: usize) {
+    bench(bencher, &MEASURES[..count], &VARIED, Instructions::Plain);
+}
+
+#[divan::bench(args = [1, 5, 6, 7])]
+fn one_core(bencher: Bencher, count: usize) {
+    bench(bencher, &MEASURES[..count], &VARIED, Instructions::Widest);
 }

@@ -34,3 +34,4 @@ pub mod numeric;
 pub mod optics;
 pub mod quantity;
 pub mod report;
+pub mod study;

@@ -58,11 +58,12 @@ impl<T: Real> PlaneMode<T> {
         let stable = T::constant(EDGE).less(margin);
         let sine = T::select(stable, below * above, T::constant(1.0)).sqrt();
         let positive = T::constant(0.0).less(m.b);
-        let skew = (m.a - m.d) / (sine * 2.0);
+        let scale = sine.recip();
+        let skew = (m.a - m.d) * (scale * 0.5);
         let beam = Beam {
-            beta: m.b.abs() / sine,
+            beta: m.b.abs() * scale,
             alpha: T::select(positive, skew, -skew),
-            gamma: m.c.abs() / sine,
+            gamma: m.c.abs() * scale,
         };
         Self::new(half_trace, margin, stable, sine, positive, beam)
     }

@@ -12,33 +12,76 @@ use crate::numeric::Real;
 use crate::optics::{PerPlane, Plane};
 
 /// Spacing of neighbouring orders in either plane, in free spectral ranges, flips counted.
+#[inline(always)]
 pub fn spacings<T: Real>(cavity: &Cavity, modes: &PerPlane<PlaneMode<T>>) -> PerPlane<T> {
-    PerPlane::from_fn(|plane: Plane| {
+    let spacing = |plane: Plane| {
         let odd = cavity.flips()[plane] % 2 == 1;
-        let flip = if odd { 0.5 } else { 0.0 };
-        modes[plane].gouy_phase / TAU + flip
-    })
+        modes[plane].gouy_phase * (1.0 / TAU) + if odd { 0.5 } else { 0.0 }
+    };
+    PerPlane {
+        tangential: spacing(Plane::Tangential),
+        sagittal: spacing(Plane::Sagittal),
+    }
+}
+
+/// Highest order m + n that is ever looked at.
+pub const HIGHEST_ORDER: usize = 100;
+
+/// Multiples of a spacing, folded: the table from which offsets of modes are summed.
+#[derive(Clone, Debug)]
+pub struct Multiples<T>(Vec<T>);
+
+impl<T> Default for Multiples<T> {
+    fn default() -> Self {
+        Multiples(Vec::new())
+    }
+}
+
+/// Calls `visit` with m, n and the *nearness* of every TEM_mn with 1 ≤ m + n ≤ `highest`: half a
+/// free spectral range less its distance from the fundamental, in free spectral ranges, from the
+/// spacings of [`spacings`].
+///
+/// With both multiples folded, their sum x lies within ±1 and its distance from the nearest whole
+/// number is ½ − ||x| − ½|.
+#[inline(always)]
+pub fn each_nearness<T: Real>(
+    spacing: PerPlane<T>,
+    highest: usize,
+    multiples: &mut Multiples<T>,
+    mut visit: impl FnMut(usize, usize, T),
+) {
+    let Multiples(sagittal) = multiples;
+    sagittal.clear();
+    let mut turns = T::constant(0.0);
+    for _ in 0..=highest {
+        sagittal.push(turns.folded());
+        turns = turns + spacing.sagittal;
+    }
+    let mut turns = T::constant(0.0);
+    for m in 0..=highest {
+        let tangential = turns.folded();
+        let from = usize::from(m == 0);
+        for (n, sagittal) in sagittal.iter().enumerate().take(highest + 1 - m).skip(from) {
+            let sum = tangential + *sagittal;
+            visit(m, n, (sum.abs() - 0.5).abs());
+        }
+        turns = turns + spacing.tangential;
+    }
 }
 
 /// The least |offset| from the fundamental of any TEM_mn with 1 ≤ m + n ≤ `highest`, in free
-/// spectral ranges, from the spacings of [`spacings`].
+/// spectral ranges.
 #[inline(always)]
-pub fn least_offset<T: Real>(spacing: PerPlane<T>, highest: usize) -> T {
-    let folded = |x: T| x - x.round();
-    let spacing = spacing.map(folded);
-    let mut least = T::constant(1.0);
-    let mut first = T::constant(0.0);
-    for m in 0..=highest {
-        let mut offset = first;
-        for n in 0..=highest - m {
-            if m + n > 0 {
-                least = least.min(folded(offset).abs());
-            }
-            offset = offset + spacing.sagittal;
-        }
-        first = first + spacing.tangential;
-    }
-    least
+pub fn least_offset<T: Real>(
+    spacing: PerPlane<T>,
+    highest: usize,
+    multiples: &mut Multiples<T>,
+) -> T {
+    let mut nearest = T::constant(0.0);
+    each_nearness(spacing, highest, multiples, |_, _, nearness| {
+        nearest = nearest.max(nearness);
+    });
+    -nearest + 0.5
 }
 
 #[cfg(test)]
@@ -65,7 +108,11 @@ mod tests {
             let offset = (turns - turns.floor()) * fsr;
             assert_abs_diff_eq!(offset, *listed, epsilon = 6e-5);
             nearest = nearest.min(listed.min(fsr - listed));
-            let least = least_offset(PerPlane::both(spacing), index + 1) * fsr;
+            let least = least_offset(
+                PerPlane::both(spacing),
+                index + 1,
+                &mut Multiples::default(),
+            ) * fsr;
             assert_abs_diff_eq!(least, nearest, epsilon = 6e-5);
         }
     }

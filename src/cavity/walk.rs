@@ -68,15 +68,18 @@ impl<T: Real> Leg<T> {
     #[inline(always)]
     pub fn after(&self, before: PerPlane<RayMatrix<T>>) -> PerPlane<RayMatrix<T>> {
         match self.piece {
-            Piece::Kick(c) => before.zip(c, RayMatrix::kicked),
+            Piece::Kick(c) => before.kicked(c),
             Piece::Stretch(stretch) => match stretch.tangential.strength_squared {
                 None => {
                     let reduced = stretch.tangential.length / stretch.tangential.index;
-                    before.map(|m| m.propagated(reduced))
+                    before.propagated(reduced)
                 }
-                Some(_) => before.zip(stretch, |m, stretch| stretch.after(m)),
+                Some(_) => PerPlane {
+                    tangential: stretch.tangential.after(before.tangential),
+                    sagittal: stretch.sagittal.after(before.sagittal),
+                },
             },
-            Piece::Face(_, m) | Piece::Given(m) => before.zip(m, RayMatrix::then),
+            Piece::Face(_, m) | Piece::Given(m) => before.then(m),
             Piece::Opening => before,
         }
     }

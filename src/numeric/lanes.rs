@@ -4,7 +4,6 @@
 //! instructions of whatever width the surrounding function is compiled for. No operation depends
 //! on that width: results are the same bytes everywhere.
 
-use std::array::from_fn;
 use std::f64::consts::{FRAC_PI_2, PI};
 use std::ops::{Add, BitAnd, Div, Mul, Neg, Sub};
 
@@ -35,26 +34,41 @@ impl BitAnd for LaneMask {
     type Output = Self;
     #[inline(always)]
     fn bitand(self, other: Self) -> Self {
-        LaneMask(from_fn(|i| self.0[i] & other.0[i]))
+        LaneMask(each(|i| self.0[i] & other.0[i]))
     }
+}
+
+/// One value a lane, in a loop that the compiler always sees through.
+#[inline(always)]
+fn each<X: Copy + Default>(f: impl Fn(usize) -> X) -> [X; LANES] {
+    let mut values = [X::default(); LANES];
+    for (lane, value) in values.iter_mut().enumerate() {
+        *value = f(lane);
+    }
+    values
 }
 
 /// Half of 2⁵³: adding and taking away 1.5·2⁵² rounds to the nearest whole number.
 const ROUNDS: f64 = 1.5 * (1_u64 << 52) as f64;
 
+/// Tangents of π/16, π/8 and 3π/16.
+const TAN_11_25: f64 = 0.198_912_367_379_658;
+const TAN_22_5: f64 = 0.414_213_562_373_095_03;
+const TAN_33_75: f64 = 0.668_178_637_919_298_9;
+
 impl Lanes {
     #[inline(always)]
     fn zip(self, other: Self, f: impl Fn(f64, f64) -> f64) -> Self {
-        Lanes(from_fn(|i| f(self.0[i], other.0[i])))
+        Lanes(each(|i| f(self.0[i], other.0[i])))
     }
 
     #[inline(always)]
     fn map(self, f: impl Fn(f64) -> f64) -> Self {
-        Lanes(from_fn(|i| f(self.0[i])))
+        Lanes(each(|i| f(self.0[i])))
     }
 
-    /// A function that is dear: computed once where all lanes are the same.
-    #[inline(always)]
+    /// A function that is dear, called lane by lane: once where all lanes are the same.
+    #[inline(never)]
     fn map_dear(self, f: impl Fn(f64) -> f64) -> Self {
         if self.is_uniform() {
             Lanes([f(self.0[0]); LANES])
@@ -119,23 +133,27 @@ impl Real for Lanes {
     fn acos(self) -> Self {
         ((self + 1.0) * (-self + 1.0)).sqrt().atan2(self)
     }
-    /// By halving the angle twice, tan(φ/2) = t/(1 + √(1 + t²)), and eleven terms of the series
-    /// t − t³/3 + t⁵/5 …, which from |t| ≤ tan(π/16) reach rounding.
+    /// The angle of the octant less the nearer of π/16 and 3π/16, whose tangent then is at most
+    /// tan(π/16): eleven terms of the series t − t³/3 + t⁵/5 … reach rounding.
     #[inline(always)]
     fn atan2(self, x: Self) -> Self {
         let zero = Self::constant(0.0);
         let (up, across) = (self.abs(), x.abs());
         let steep = across.less(up);
         let (low, high) = (up.min(across), up.max(across));
+        let flat = low.less(high * TAN_22_5);
+        let both = |near: f64, far: f64| Self::select(flat, Self::constant(near), Self::constant(far));
+        let tangent = both(TAN_11_25, TAN_33_75);
         let nothing = high.less(Self::constant(f64::MIN_POSITIVE));
-        let ratio = low / Self::select(nothing, Self::constant(1.0), high);
-        let half = |t: Self| t / ((t.squared() + 1.0).sqrt() + 1.0);
-        let t = half(half(ratio));
+        let across = Self::select(nothing, Self::constant(1.0), high + tangent * low);
+        let t = (low - tangent * high) / across;
         let square = -t.squared();
-        let series = (0..11)
-            .rev()
-            .fold(zero, |tail, k| tail * square + 1.0 / f64::from(2 * k + 1));
-        let octant = t * series * 4.0;
+        let mut series = zero;
+        for k in (0..11).rev() {
+            series = series * square + 1.0 / f64::from(2 * k + 1);
+        }
+        let angle = t * series + both(PI / 16.0, 3.0 * PI / 16.0);
+        let octant = Self::select(nothing, zero, angle);
         let quadrant = Self::select(steep, -octant + FRAC_PI_2, octant);
         let half_plane = Self::select(x.less(zero), -quadrant + PI, quadrant);
         Self::select(self.less(zero), -half_plane, half_plane)
@@ -172,7 +190,7 @@ impl Real for Lanes {
     }
     #[inline(always)]
     fn less(self, other: Self) -> LaneMask {
-        LaneMask(from_fn(
+        LaneMask(each(
             |i| {
                 if self.0[i] < other.0[i] { u64::MAX } else { 0 }
             },
@@ -180,7 +198,7 @@ impl Real for Lanes {
     }
     #[inline(always)]
     fn select(mask: LaneMask, yes: Self, no: Self) -> Self {
-        Lanes(from_fn(|i| {
+        Lanes(each(|i| {
             let bits = (yes.0[i].to_bits() & mask.0[i]) | (no.0[i].to_bits() & !mask.0[i]);
             f64::from_bits(bits)
         }))

@@ -60,6 +60,11 @@ pub trait Real:
     /// `yes` where the mask holds, `no` elsewhere.
     fn select(mask: Self::Mask, yes: Self, no: Self) -> Self;
 
+    /// A flag that is the same for all.
+    #[inline(always)]
+    fn always(flag: bool) -> Self::Mask {
+        Self::constant(0.0).less(Self::constant(if flag { 1.0 } else { -1.0 }))
+    }
     /// The smaller of two numbers.
     #[inline(always)]
     fn min(self, other: Self) -> Self {
@@ -69,6 +74,11 @@ pub trait Real:
     #[inline(always)]
     fn max(self, other: Self) -> Self {
         Self::select(self.less(other), other, self)
+    }
+    /// What is left over the nearest whole number, in [−½, ½].
+    #[inline(always)]
+    fn folded(self) -> Self {
+        self - self.round()
     }
     /// The square.
     #[inline(always)]

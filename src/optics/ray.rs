@@ -11,6 +11,7 @@
 //! A flip of the tangential axis at a reflection is left out here and counted by the cavity.
 //! Source: Kogelnik & Li, Appl. Opt. 5, 1550 (1966); reduced angles as in Siegman, *Lasers* (1986).
 
+use super::PerPlane;
 use crate::numeric::Real;
 
 /// The ray matrix of an element in one plane, in reduced coordinates.
@@ -52,6 +53,17 @@ impl<T: Real> RayMatrix<T> {
             b: T::constant(0.0),
             c,
             d: T::constant(1.0),
+        }
+    }
+
+    /// The same function of every entry.
+    #[inline(always)]
+    pub fn map<U>(self, f: impl Fn(T) -> U) -> RayMatrix<U> {
+        RayMatrix {
+            a: f(self.a),
+            b: f(self.b),
+            c: f(self.c),
+            d: f(self.d),
         }
     }
 
@@ -146,5 +158,45 @@ impl<T: Real> RayMatrix<T> {
     #[inline(always)]
     pub fn half_trace(self) -> T {
         (self.a + self.d) * 0.5
+    }
+}
+
+/// Both planes at a time, spelled out: a function handed to [`PerPlane::zip`] is not always inlined,
+/// and what is not inlined does not use the vector instructions chosen at run time.
+impl<T: Real> PerPlane<RayMatrix<T>> {
+    /// These elements followed by `next`.
+    #[inline(always)]
+    pub fn then(self, next: Self) -> Self {
+        PerPlane {
+            tangential: self.tangential.then(next.tangential),
+            sagittal: self.sagittal.then(next.sagittal),
+        }
+    }
+
+    /// These elements followed by ones that do not vary.
+    #[inline(always)]
+    pub fn then_fixed(self, next: PerPlane<RayMatrix<f64>>) -> Self {
+        PerPlane {
+            tangential: self.tangential.then_fixed(next.tangential),
+            sagittal: self.sagittal.then_fixed(next.sagittal),
+        }
+    }
+
+    /// These elements followed by a propagation over the same reduced length, in metres.
+    #[inline(always)]
+    pub fn propagated(self, reduced_length: T) -> Self {
+        PerPlane {
+            tangential: self.tangential.propagated(reduced_length),
+            sagittal: self.sagittal.propagated(reduced_length),
+        }
+    }
+
+    /// These elements followed by a thin one that adds `c`·x to the reduced angle.
+    #[inline(always)]
+    pub fn kicked(self, c: PerPlane<T>) -> Self {
+        PerPlane {
+            tangential: self.tangential.kicked(c.tangential),
+            sagittal: self.sagittal.kicked(c.sagittal),
+        }
     }
 }

@@ -27,6 +27,18 @@ pub struct Stretch<T> {
     pub strength_squared: Option<T>,
 }
 
+impl Stretch<f64> {
+    /// The same stretch over another number type, not varying.
+    #[inline(always)]
+    pub fn constant<T: Real>(self) -> Stretch<T> {
+        Stretch {
+            length: T::constant(self.length),
+            index: T::constant(self.index),
+            strength_squared: self.strength_squared.map(T::constant),
+        }
+    }
+}
+
 impl<T: Real> Stretch<T> {
     /// A uniform medium.
     #[inline(always)]

@@ -1,0 +1,3 @@
+//! Many cavities, few analyses: sweeps and tolerances.
+
+pub mod batch;

@@ -83,6 +83,7 @@ impl Cavity {
             limits: Vec::new(),
             polarisation: super::Polarisation::S,
             highest_order: DEFAULT_ORDER,
+            tolerancing: super::Tolerancing::default(),
             form,
             parts,
             book,

@@ -63,6 +63,33 @@ impl Entry {
         self.kind.is_reciprocal()
     }
 
+    /// The value kept when the number as written lies `by` off its nominal value.
+    ///
+    /// `by` counts as a [`Spread`] does: on the number as written (metres, for a radius; without
+    /// its sense, for a face), and in 1/m where that number is flat.
+    pub fn displaced<T: Real>(&self, by: T) -> T {
+        if !self.is_reciprocal() || self.value == 0.0 {
+            return by + self.value;
+        }
+        // A face's radius has no sign of its own: the curvature carries its sense.
+        let per_metre = match self.kind {
+            Kind::Face => self.value.abs(),
+            _ => self.value,
+        };
+        (by * per_metre + 1.0).recip() * self.value
+    }
+
+    /// The least and the greatest value kept between its limits; none without limits.
+    ///
+    /// Of a radius these are curvatures in 1/m, so that its lower limit makes the greatest.
+    pub fn kept_limits(&self) -> Option<(f64, f64)> {
+        let Spread::Limits { below, above } = self.spread else {
+            return None;
+        };
+        let (a, b) = (self.displaced(-below), self.displaced(above));
+        Some((a.min(b), a.max(b)))
+    }
+
     /// Whether moving this number alone changes the round trip of rays and the builder can move
     /// it: lengths, thicknesses, radii, thermal powers and focal lengths.
     pub fn shapes_the_mode(&self) -> bool {
@@ -135,6 +162,13 @@ impl Book {
         self.entries.iter().enumerate().map(|(i, e)| (Slot(i), e))
     }
 
+    /// The slots with a spread and their entries, in the order of the file; a tied number has none
+    /// of its own.
+    pub fn spread_slots(&self) -> impl Iterator<Item = (Slot, &Entry)> {
+        self.iter()
+            .filter(|(_, entry)| entry.origin != Origin::Tied && entry.spread != Spread::Exact)
+    }
+
     /// The ties, each after those that it follows.
     pub fn ties(&self) -> &[Tie] {
         &self.ties
@@ -201,5 +235,68 @@ impl Book {
             Some((factor, curvature)) => curvature / (direct * curvature + factor),
             None => T::select(zero.less(direct.abs()), direct, T::constant(1.0)).recip(),
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use approx::assert_relative_eq;
+
+    /// A few roundings.
+    const ROUNDING: f64 = 1e-15;
+
+    fn entry(kind: Kind, value: f64, spread: Spread) -> Entry {
+        Entry {
+            address: "M1.roc".into(),
+            part: Some(0),
+            key: "roc",
+            kind,
+            value,
+            spread,
+            origin: Origin::Written,
+        }
+    }
+
+    #[test]
+    fn limits_of_a_radius_become_limits_of_its_curvature() {
+        let limits = Spread::Limits {
+            below: 0.002,
+            above: 0.001,
+        };
+        let curvature = |radius: f64| 1.0 / radius;
+        for (kind, value, low, high) in [
+            (Kind::Length, 0.1, 0.098, 0.101),
+            (Kind::Radius, 10.0, curvature(0.101), curvature(0.098)),
+            (Kind::Radius, -10.0, curvature(-0.099), curvature(-0.102)),
+            (Kind::Focal, -10.0, curvature(-0.099), curvature(-0.102)),
+            (Kind::Face, 10.0, curvature(0.101), curvature(0.098)),
+            // Concave: the radius without sense lies between 98 mm and 101 mm.
+            (Kind::Face, -10.0, curvature(-0.098), curvature(-0.101)),
+            (Kind::Radius, 0.0, -0.002, 0.001),
+        ] {
+            let (found_low, found_high) = entry(kind, value, limits).kept_limits().unwrap();
+            assert_relative_eq!(found_low, low, max_relative = ROUNDING);
+            assert_relative_eq!(found_high, high, max_relative = ROUNDING);
+        }
+        assert_eq!(entry(Kind::Length, 0.1, Spread::Exact).kept_limits(), None);
+    }
+
+    #[test]
+    fn what_is_tied_or_exact_is_not_among_the_spreads() {
+        let mut book = Book::default();
+        let standard = Spread::Standard { uncertainty: 0.001 };
+        book.enter(entry(Kind::Length, 0.1, Spread::Exact));
+        let spread = book.enter(entry(Kind::Length, 0.1, standard));
+        let tied = book.enter(entry(Kind::Length, 0.1, standard));
+        let tie = Tie {
+            target: tied,
+            terms: vec![(1.0, spread)],
+            constant: 0.0,
+            text: String::new(),
+        };
+        book.set_ties(vec![tie]).unwrap();
+        let found: Vec<Slot> = book.spread_slots().map(|(slot, _)| slot).collect();
+        assert_eq!(found, [spread]);
     }
 }

@@ -8,6 +8,7 @@ mod book;
 mod frame;
 mod measure;
 mod part;
+mod tolerancing;
 mod walk;
 
 pub use assemble::{Draft, Fault};
@@ -17,6 +18,7 @@ pub use part::{
     Coating, Element, Incidence, Index, Mirror, Opening, Part, Polarisation, Side, Slab, SlabLoss,
     Substrate, ThermalLens, ThermalPlace,
 };
+pub use tolerancing::{Adjust, Group, MOST_TOLERANCED, Shape, Tolerancing};
 pub(crate) use walk::slab_crossing;
 pub use walk::{End, Leg, Piece};
 
@@ -53,6 +55,8 @@ pub struct Cavity {
     pub polarisation: Polarisation,
     /// Highest order of the transverse modes that count.
     pub highest_order: usize,
+    /// How quantities lie within their spreads, and what is adjusted.
+    pub tolerancing: Tolerancing,
     form: Form,
     parts: Vec<Part>,
     book: Book,

@@ -223,9 +223,11 @@ impl<'t> Context<'t> {
 pub(super) fn example(key: &str, kind: Kind) -> String {
     let text = match (key, kind) {
         ("wavelength", _) => "1064 nm",
-        ("above" | "below" | "between" | "waist" | "spot", Kind::Length) => "150 um",
+        ("above" | "below" | "between" | "to" | "waist" | "spot", Kind::Length) => "150 um",
         ("clear", _) => "90 %",
         ("thickness", _) => "5 mm",
+        ("travel", Kind::Length) => "1 mm",
+        ("travel", Kind::Angle) => "0.1 deg",
         ("diameter" | "width" | "height", _) => "12.7 mm",
         ("radius" | "half_width", _) => "1 mm",
         (_, Kind::Number) => return kind.example().into(),
@@ -238,7 +240,7 @@ pub(super) fn example(key: &str, kind: Kind) -> String {
 fn with_unit(number: &str, key: &str, kind: Kind) -> String {
     let unit = match (key, kind) {
         ("wavelength", _) => "nm",
-        ("above" | "below" | "between", Kind::Length) => "um",
+        ("above" | "below" | "between" | "to", Kind::Length) => "um",
         (key, Kind::Length) if key.starts_with("waist") => "um",
         ("spot" | "mode_field", _) => "um",
         (_, Kind::Frequency) => "Hz",

@@ -72,19 +72,23 @@ pub(super) fn read_limit<'t>(
             ),
         }
     }
-    let kind = match measure.presence() {
-        Presence::Number => Kind::Number,
-        Presence::Length => Kind::Length,
-        Presence::Position => Kind::Position,
-        Presence::Angle => Kind::Angle,
-        Presence::Frequency => Kind::Frequency,
-    };
-    let bounds = read_bounds(&fields, kind)?;
+    let bounds = read_bounds(&fields, measure_kind(measure))?;
     Some(Limit {
         name,
         measure,
         bounds,
     })
+}
+
+/// How the value of a measure is written.
+pub(super) fn measure_kind(measure: Measure) -> Kind {
+    match measure.presence() {
+        Presence::Number => Kind::Number,
+        Presence::Length => Kind::Length,
+        Presence::Position => Kind::Position,
+        Presence::Angle => Kind::Angle,
+        Presence::Frequency => Kind::Frequency,
+    }
 }
 
 /// A whole number of a transverse order.

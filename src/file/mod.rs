@@ -2,6 +2,8 @@
 //!
 //! The room gets a name and a text and never touches a disk. It is the only one that knows TOML.
 
+mod addresses;
+mod adjust;
 mod context;
 mod fields;
 mod keys;
@@ -16,6 +18,7 @@ mod slab;
 pub mod starters;
 mod syntax;
 mod ties;
+mod tolerance;
 
 use std::cell::{Cell, RefCell};
 use std::collections::{HashMap, HashSet};
@@ -188,6 +191,7 @@ fn read_file<'t>(
     report_unused_overrides(&context);
 
     let (Some(form), Some(parts)) = (form, parts) else {
+        tolerance::read_tolerance(&fields, None);
         return Err(context.diagnostics.take());
     };
     let spans = part_spans(top);
@@ -199,6 +203,7 @@ fn read_file<'t>(
     };
     let in_order_so_far = context.diagnostics.borrow().is_empty();
     let mut cavity = Cavity::assemble(draft).map_err(|faults| {
+        tolerance::read_tolerance(&fields, None);
         if !in_order_so_far {
             // What follows from a mistake already told is no news.
             return context.diagnostics.take();
@@ -216,6 +221,7 @@ fn read_file<'t>(
                     .map_or(span, Spanned::span);
                 error(Some(context.place(span)), fault.message, &fault.help)
             })
+            .chain(context.diagnostics.take())
             .collect::<Vec<_>>()
     })?;
     plain::check_input(&fields, &cavity);
@@ -233,6 +239,7 @@ fn read_file<'t>(
         .flatten()
         .filter_map(|limit| limits::read_limit(&context, limit, &cavity))
         .collect();
+    cavity.tolerancing = tolerance::read_tolerance(&fields, Some(&cavity));
     let diagnostics = context.diagnostics.take();
     if diagnostics.is_empty() {
         Ok(Loaded {
@@ -442,18 +449,11 @@ fn read_path<'t>(
 }
 
 fn report_unused_overrides(context: &Context<'_>) {
-    let book = context.book.borrow();
     for set in context.overrides.iter().filter(|set| !set.used.get()) {
         if context.may_exist(&set.address) {
             continue;
         }
-        let known = book.iter().map(|(_, entry)| entry.address.as_str());
-        let help = match nearest(&set.address, known) {
-            Some(near) => format!("did you mean {near}?"),
-            None => {
-                "an address is PART.key, such as M3.roc, or wavelength, temperature, pump".into()
-            }
-        };
+        let help = context.instead_of(&set.address);
         let place = Place {
             source: set.place.source,
             span: 0..set.address.len(),

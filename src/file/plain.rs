@@ -3,11 +3,9 @@
 
 use std::collections::HashSet;
 
-use toml::de::{DeTable, DeValue};
-
-use super::context::{Context, in_order, shown};
+use super::context::shown;
 use super::fields::Fields;
-use super::keys::{Holds, POLARISATIONS, SHAPES, SOURCE, TOLERANCE};
+use super::keys::{Holds, POLARISATIONS, SOURCE};
 use super::limits::read_order;
 use super::parts::read_part;
 use crate::cavity::{Cavity, Index, Part};
@@ -63,38 +61,6 @@ pub(super) fn read_plain<'t>(fields: &Fields<'_, 't>, ambient: Index, path: &[Pa
             }
         }
     }
-    if let Some((table, _)) = fields.table("tolerance", "write it like { shape = \"rectangular\" }")
-    {
-        read_tolerance(context, table);
-    }
-}
-
-fn read_tolerance<'t>(context: &Context<'t>, table: &'t DeTable<'t>) {
-    let fields = Fields::new(context, table, 0..0)
-        .owned_by("tolerance")
-        .knowing(&TOLERANCE);
-    fields.refuse_unknown("`tolerance`", |_| None);
-    fields.word("shape", &SHAPES);
-    if let Some((shapes, span)) =
-        fields.table("shapes", "write it like { \"M3.roc\" = \"normal\" }")
-    {
-        let shapes_fields = Fields::new(context, shapes, span).owned_by("tolerance.shapes");
-        for (address, _, _) in in_order(shapes) {
-            shapes_fields.word(address, &SHAPES);
-        }
-    }
-    for key in ["groups", "adjust"] {
-        for item in fields.list(key, "a list of tables").into_iter().flatten() {
-            if !matches!(item.get_ref(), DeValue::Table(_)) {
-                context.report(
-                    Some(context.place(item.span())),
-                    format!("every entry of `{key}` is a table"),
-                    "write it like groups = [ { of = [\"M3.roc\", \"M4.roc\"], correlation = 1.0 } ]",
-                );
-            }
-        }
-    }
-    fields.table("cost", "write it like { \"d1.length\" = 2.0 }");
 }
 
 /// Checks that the input mirror exists and is a mirror.

@@ -115,9 +115,8 @@ fn value(holds: Holds) -> Value {
         }),
         Holds::Numbers => json!({
             "type": "object",
-            "additionalProperties": { "type": "number" },
+            "additionalProperties": { "type": "number", "exclusiveMinimum": 0 },
         }),
-        Holds::Anything => json!({ "type": "array", "items": { "type": "object" } }),
     }
 }
 

@@ -142,7 +142,7 @@ impl Kind {
     }
 
     /// Whether values below zero are refused.
-    pub(super) fn is_never_negative(self) -> bool {
+    pub fn is_never_negative(self) -> bool {
         matches!(
             self,
             Kind::Length

@@ -74,7 +74,7 @@ defaults = { mirror = { diameter = "1/2 in" } }
 source = { waist = "350 um", at = "-600 mm", m2 = 1.1, power = "10 W" }
 feed = [ { lens = "L0", focal = "-200 mm ± 1 %" } ]
 limits = [ { of = "margin", above = 0.1 }, { of = "M1.spot", between = ["0.1 mm", "1 mm"] } ]
-tolerance = { shape = "normal", shapes = { "d1.length" = "rectangular" }, cost = { "d1.length" = 2.0 }, groups = [] }
+tolerance = { shape = "normal", shapes = { "d1.length" = "rectangular" }, cost = { "d1.length" = 2.0 }, groups = [ { of = ["M1.roc", "M2.roc_sagittal"], correlation = 0.5 } ], adjust = [ { set = "d1.length", travel = "1 mm", hold = "margin", to = 0.8 }, { set = "X1.temperature", travel = "1 K", hold = "M1.spot", to = "150 um" } ] }
 path = [
   { mirror = "M1", roc = "flat ± 0.003 1/m", reflectance = "> 99.9 %", loss = 5e-5, thickness = "6.35 mm", substrate = "fused silica", back = "100 mm convex", pointing = "0 ± 50 urad", damage = "10 J/cm2" },
   { gap = "d1", length = "100.02(5) mm", medium = 1.0003 },
@@ -96,7 +96,7 @@ fn one_of_everything_satisfies_it() {
 fn broken_files_do_not() {
     let validator = validator();
     let good = from_toml(RICH);
-    let broken: [(&str, Value); 14] = [
+    let broken: [(&str, Value); 18] = [
         ("/wavelength", json!(1064)),
         ("/wavelength", json!("1064")),
         ("/wavelength", json!("1064 nmm")),
@@ -111,6 +111,10 @@ fn broken_files_do_not() {
         ("/path/2/thermal", json!("300 mm")),
         ("/path/6/tangential", json!([[1, 0.1]])),
         ("/general/length", json!(0.2)),
+        ("/tolerance/cost/d1.length", json!(0)),
+        ("/tolerance/shapes/d1.length", json!("gaussian")),
+        ("/tolerance/groups/0", json!({ "members": ["M1.roc"] })),
+        ("/tolerance/adjust/0", json!({ "move": "d1.length" })),
     ];
     for (place, value) in broken {
         let mut file = good.clone();

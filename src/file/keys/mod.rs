@@ -5,7 +5,9 @@ mod part;
 mod top;
 
 pub(super) use part::{KINDS, PROFILES, PartKind, SIDES, SLIT_PLANES, THERMAL_PLACES};
-pub(super) use top::{FORMS, GENERAL, LIMIT, POLARISATIONS, SHAPES, SOURCE, TOLERANCE, TOP};
+pub(super) use top::{
+    ADJUST, FORMS, GENERAL, GROUP, LIMIT, POLARISATIONS, SHAPES, SOURCE, TOLERANCE, TOP,
+};
 
 use crate::quantity::Kind;
 
@@ -45,7 +47,7 @@ pub(super) enum Holds {
     Tables(&'static [Key]),
     /// Texts.
     Texts,
-    /// A bound, in whatever the limited measure is written in.
+    /// A quantity, in whatever the measure or quantity it belongs to is written in.
     Bound,
     /// Two bounds.
     Bounds,
@@ -55,10 +57,8 @@ pub(super) enum Holds {
     Defaults,
     /// A word of these for each address.
     Words(&'static [&'static str]),
-    /// A number for each address.
+    /// A number above zero for each address.
     Numbers,
-    /// Tables that are not looked into yet.
-    Anything,
 }
 
 const fn key(name: &'static str, holds: Holds, says: &'static str) -> Key {
@@ -88,7 +88,7 @@ mod tests {
     #[test]
     fn no_table_names_a_key_twice() {
         let tables = KINDS.iter().map(|kind| kind.keys);
-        for table in tables.chain([&TOP[..], &SOURCE, &LIMIT, &TOLERANCE]) {
+        for table in tables.chain([&TOP[..], &SOURCE, &LIMIT, &TOLERANCE, &GROUP, &ADJUST]) {
             let mut known = names(table);
             known.sort_unstable();
             known.dedup();

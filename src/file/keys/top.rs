@@ -1,8 +1,8 @@
 //! Keys of a whole file, and of its tables that are not parts.
 
 use super::Holds::{
-    Anything, Bound, Bounds, Count, Defaults, General, Medium, Numbers, Parts, Quantities, Table,
-    Tables, Text, Texts, Word, Words,
+    Bound, Bounds, Count, Defaults, General, Medium, Numbers, Parts, Quantities, Table, Tables,
+    Text, Texts, Word, Words,
 };
 use super::{Key, key, quantity};
 use crate::quantity::Kind;
@@ -171,16 +171,46 @@ pub(in crate::file) const TOLERANCE: [Key; 5] = [
         "How quantities lie within their limits; rectangular by default",
     ),
     key("shapes", Words(&SHAPES), "The same for single addresses"),
-    key("groups", Anything, "Quantities that move together"),
+    key("groups", Tables(&GROUP), "Quantities that move together"),
     key(
         "adjust",
-        Anything,
+        Tables(&ADJUST),
         "What is adjusted once the parts are there",
     ),
     key(
         "cost",
         Numbers,
-        "What it costs to tighten a tolerance, by address",
+        "Relative cost of tightening a tolerance, by address; 1 where none is named",
+    ),
+];
+
+/// Keys of a group of `tolerance`.
+pub(in crate::file) const GROUP: [Key; 2] = [
+    key("of", Texts, "Addresses of the quantities, two or more"),
+    quantity(
+        "correlation",
+        Kind::Number,
+        "Coefficient above 0 and not above 1; by default 1, where they move as one",
+    ),
+];
+
+/// Keys of an adjustment of `tolerance`.
+pub(in crate::file) const ADJUST: [Key; 4] = [
+    key("set", Text, "Address of the quantity that is moved"),
+    key(
+        "travel",
+        Bound,
+        "How far it moves to either side, in its own unit",
+    ),
+    key(
+        "hold",
+        Text,
+        "The measure that is held by it, such as \"margin.tangential\"",
+    ),
+    key(
+        "to",
+        Bound,
+        "Where the measure is held; at its nominal value by default",
     ),
 ];
 

@@ -5,8 +5,10 @@ use std::f64::consts::{FRAC_PI_2, PI};
 
 use super::book::Book;
 use super::frame;
-use super::part::{Element, Incidence, Index, Mirror, Part, Side, Slab};
+use super::part::{Element, Incidence, Index, Part, Side, Slab};
+use super::settle::{has_horizontal_tangential, settle_media, settle_planes};
 use super::{Cavity, Form};
+use crate::optics::ray::RayMatrix;
 use crate::optics::{PerPlane, Plane};
 
 /// A ring whose last direction misses its first by more than this (radians) is doubted: common
@@ -29,6 +31,8 @@ pub struct Draft {
     pub ambient: Index,
     /// The parts; `swapped`, `before` and `after` are settled here.
     pub parts: Vec<Part>,
+    /// The optics between source and input mirror; likewise.
+    pub feed: Vec<Part>,
     /// The numbers; the first three are wavelength, temperature and pump.
     pub book: Book,
 }
@@ -38,6 +42,8 @@ pub struct Draft {
 pub struct Fault {
     /// Index of the part at fault, if one is.
     pub part: Option<usize>,
+    /// Whether that part is one of the feed.
+    pub in_feed: bool,
     /// The key at fault, if one is.
     pub key: Option<&'static str>,
     /// What is wrong.
@@ -56,6 +62,7 @@ impl Cavity {
             form,
             ambient,
             mut parts,
+            mut feed,
             book,
         } = draft;
         let mut faults = Vec::new();
@@ -65,14 +72,18 @@ impl Cavity {
         if !faults.is_empty() {
             return Err(faults);
         }
-        settle_media(form, ambient, &mut parts);
+        settle_media(Some(form), ambient, &mut parts);
         for (index, part) in parts.iter().enumerate() {
             check_part(index, part, &values, &mut faults);
         }
         if form == Form::Standing {
             check_end_angles(&parts, &values, &mut faults);
         }
-        let tangential_is_horizontal = settle_planes(&mut parts, &values);
+        let tangential_is_horizontal = has_horizontal_tangential(&parts, &values);
+        settle_planes(&mut parts, tangential_is_horizontal, &values);
+        settle_media(None, ambient, &mut feed);
+        settle_planes(&mut feed, tangential_is_horizontal, &values);
+        check_feed(&feed, &values, &mut faults);
         let mut cautions = Vec::new();
         let flips = count_flips(form, &parts, &values, &mut cautions, &mut faults);
         if !faults.is_empty() {
@@ -84,6 +95,10 @@ impl Cavity {
             polarisation: super::Polarisation::S,
             highest_order: DEFAULT_ORDER,
             tolerancing: super::Tolerancing::default(),
+            input: 0,
+            source: None,
+            feed,
+            sidebands: Vec::new(),
             form,
             parts,
             book,
@@ -100,27 +115,26 @@ impl Cavity {
         if length <= 0.0 && !given {
             return Err(vec![Fault {
                 part: None,
+                in_feed: false,
                 key: None,
                 message: "the path has no length".into(),
                 help: "put a gap between the mirrors: { gap = \"d1\", length = \"100 mm\" }".into(),
             }]);
         }
-        let way = cavity.one_way(&values);
-        let fits = Plane::BOTH.into_iter().all(|plane| {
-            let m = way[plane];
-            [m.a, m.b, m.c, m.d]
-                .iter()
-                .all(|entry| entry.abs() <= GREATEST_ENTRY)
-        });
-        if !fits {
-            return Err(vec![Fault {
-                part: None,
-                key: None,
-                message: "a ray through this path grows beyond all numbers".into(),
-                help: "check the digits and units of the lengths, radii and powers; an entry of \
-                       the path's ray matrix exceeds 1e60"
-                    .into(),
-            }]);
+        let ways = [cavity.one_way(&values), cavity.feed_way(&values)];
+        for (list, way) in ["path", "feed"].into_iter().zip(ways) {
+            if !fits(way) {
+                return Err(vec![Fault {
+                    part: None,
+                    in_feed: list == "feed",
+                    key: None,
+                    message: format!("a ray through this {list} grows beyond all numbers"),
+                    help: format!(
+                        "check the digits and units of the lengths, radii and powers; an entry of \
+                         the {list}'s ray matrix exceeds 1e60"
+                    ),
+                }]);
+            }
         }
         Ok(cavity)
     }
@@ -130,10 +144,20 @@ impl Cavity {
 /// be a number.
 const GREATEST_ENTRY: f64 = 1e60;
 
+fn fits(way: PerPlane<RayMatrix<f64>>) -> bool {
+    Plane::BOTH.into_iter().all(|plane| {
+        let m = way[plane];
+        [m.a, m.b, m.c, m.d]
+            .iter()
+            .all(|entry| entry.abs() <= GREATEST_ENTRY)
+    })
+}
+
 fn check_ends(form: Form, parts: &[Part], faults: &mut Vec<Fault>) {
     let mut fault = |part, message: &str, help: &str| {
         faults.push(Fault {
             part,
+            in_feed: false,
             key: None,
             message: message.into(),
             help: help.into(),
@@ -186,64 +210,11 @@ fn check_ends(form: Form, parts: &[Part], faults: &mut Vec<Fault>) {
     }
 }
 
-/// Media at the junctions: that of the nearest gap on either side, seen through whatever is thin;
-/// else the ambient.
-fn settle_media(form: Form, ambient: Index, parts: &mut [Part]) {
-    let count = parts.len();
-    let media: Vec<Option<Index>> = parts
-        .iter()
-        .map(|part| match part.element {
-            Element::Gap { medium, .. } => Some(medium),
-            _ => None,
-        })
-        .collect();
-    let is_thin: Vec<bool> = parts
-        .iter()
-        .map(|part| {
-            matches!(
-                part.element,
-                Element::Aperture | Element::Lens { .. } | Element::Matrix { .. }
-            )
-        })
-        .collect();
-    // The parts met from one on, forwards or backwards, once around a ring or to an end.
-    let nearest = |from: usize, forwards: bool| {
-        for step in 1..count {
-            let at = match (form, forwards) {
-                (Form::Ring, true) => (from + step) % count,
-                (Form::Ring, false) => (from + count - step) % count,
-                (Form::Standing, true) if from + step < count => from + step,
-                (Form::Standing, false) if step <= from => from - step,
-                _ => return None,
-            };
-            if media[at].is_some() || !is_thin[at] {
-                return media[at];
-            }
-        }
-        None
-    };
-    for index in 0..count {
-        let before = media[index]
-            .or_else(|| nearest(index, false))
-            .unwrap_or(ambient);
-        let after = media[index]
-            .or_else(|| nearest(index, true))
-            .unwrap_or(ambient);
-        let (before, after) = match (form, index) {
-            // An end mirror sends the beam back into the medium it came from.
-            (Form::Standing, 0) => (after, after),
-            (Form::Standing, i) if i + 1 == count => (before, before),
-            _ => (before, after),
-        };
-        parts[index].before = before;
-        parts[index].after = after;
-    }
-}
-
 fn check_part(index: usize, part: &Part, values: &[f64], faults: &mut Vec<Fault>) {
     let mut fault = |key, message: String, help: &str| {
         faults.push(Fault {
             part: Some(index),
+            in_feed: false,
             key,
             message,
             help: help.into(),
@@ -265,6 +236,34 @@ fn check_part(index: usize, part: &Part, values: &[f64], faults: &mut Vec<Fault>
         Element::Slab(slab) => check_slab(slab, part, values, &mut fault),
         _ => {}
     }
+}
+
+/// Judges the optics before the input mirror: as those of a path, and none of them an end.
+fn check_feed(feed: &[Part], values: &[f64], faults: &mut Vec<Fault>) {
+    let mut found = Vec::new();
+    for (index, part) in feed.iter().enumerate() {
+        check_part(index, part, values, &mut found);
+        if let Element::Mirror(mirror) = &part.element
+            && mirror.incidence.of(values) == 0.0
+        {
+            found.push(Fault {
+                part: Some(index),
+                in_feed: false,
+                key: Some("aoi"),
+                message: format!(
+                    "mirror {} of the feed sends the beam straight back",
+                    part.name
+                ),
+                help: "a mirror of the feed folds the beam: write its aoi, half the angle between \
+                       the beams; the input mirror stands in the path only"
+                    .into(),
+            });
+        }
+    }
+    faults.extend(found.into_iter().map(|fault| Fault {
+        in_feed: true,
+        ..fault
+    }));
 }
 
 fn check_angle(
@@ -317,6 +316,7 @@ fn check_end_angles(parts: &[Part], values: &[f64], faults: &mut Vec<Fault>) {
         {
             faults.push(Fault {
                 part: Some(index),
+                in_feed: false,
                 key: Some("aoi"),
                 message: format!(
                     "{} ends the cavity and must send the beam back on itself",
@@ -328,44 +328,6 @@ fn check_end_angles(parts: &[Part], values: &[f64], faults: &mut Vec<Fault>) {
             });
         }
     }
-}
-
-/// The plane of incidence of a part that has one, and the side to which it acts.
-fn tilt(part: &Part, values: &[f64]) -> Option<(bool, Side)> {
-    match &part.element {
-        Element::Mirror(Mirror {
-            incidence, fold, ..
-        }) if incidence.of(values) != 0.0 => Some((true, fold.unwrap_or(Side::Left))),
-        Element::Slab(slab) => slab.is_tilted(values).then_some((false, slab.shift)),
-        _ => None,
-    }
-}
-
-/// Finds the file's tangential plane and tells each part whether its own plane of incidence is the
-/// other one. Returns whether the tangential plane is horizontal.
-fn settle_planes(parts: &mut [Part], values: &[f64]) -> bool {
-    let first = |mirrors: bool| {
-        parts
-            .iter()
-            .filter_map(|part| tilt(part, values))
-            .find(|(is_mirror, _)| *is_mirror == mirrors)
-            .map(|(_, side)| side.is_horizontal())
-    };
-    let tangential_is_horizontal = first(true).or_else(|| first(false)).unwrap_or(true);
-    for part in parts {
-        let own_is_horizontal = match &part.element {
-            Element::Mirror(mirror) => match mirror.fold {
-                Some(side) => side.is_horizontal(),
-                // Unnamed, a tilted mirror turns the beam in the horizontal plane; a mirror met
-                // square-on has no plane of its own.
-                None => mirror.incidence.of(values) != 0.0 || tangential_is_horizontal,
-            },
-            Element::Slab(slab) => slab.shift.is_horizontal(),
-            _ => tangential_is_horizontal,
-        };
-        part.swapped = own_is_horizontal != tangential_is_horizontal;
-    }
-    tangential_is_horizontal
 }
 
 /// Counts the flips of each axis in one round trip, roll included.
@@ -410,6 +372,7 @@ fn count_flips(
             for (index, part, _) in unnamed {
                 faults.push(Fault {
                     part: Some(index),
+                    in_feed: false,
                     key: None,
                     message: format!(
                         "this ring leaves the plane, and {} does not say to which side it turns \
@@ -441,6 +404,7 @@ fn count_flips(
     if off > ROLL_WITHIN {
         faults.push(Fault {
             part: None,
+            in_feed: false,
             key: None,
             message: format!(
                 "this ring is non-planar and turns the beam about itself by {:.3}° in one round \

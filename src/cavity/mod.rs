@@ -8,6 +8,8 @@ mod book;
 mod frame;
 mod measure;
 mod part;
+mod settle;
+mod source;
 mod tolerancing;
 mod walk;
 
@@ -18,6 +20,7 @@ pub use part::{
     Coating, Element, Incidence, Index, Mirror, Opening, Part, Polarisation, Side, Slab, SlabLoss,
     Substrate, ThermalLens, ThermalPlace,
 };
+pub use source::{Source, SourceBeam};
 pub use tolerancing::{Adjust, Group, MOST_TOLERANCED, Shape, Tolerancing};
 pub(crate) use walk::slab_crossing;
 pub use walk::{End, Leg, Piece};
@@ -57,6 +60,17 @@ pub struct Cavity {
     pub highest_order: usize,
     /// How quantities lie within their spreads, and what is adjusted.
     pub tolerancing: Tolerancing,
+    /// Index of the mirror by which the source enters; the first, unless another is named.
+    pub input: usize,
+    /// The beam that is sent in, where one is written.
+    pub source: Option<Source>,
+    /// The optics between the source and the input mirror's outer face, as the beam meets them.
+    ///
+    /// Their media and planes are settled as a path's are, with the ambient at either end; their
+    /// numbers are in the book, and belong to no part of the path.
+    pub feed: Vec<Part>,
+    /// Modulation frequencies of the source, in hertz, above zero; both signs are meant.
+    pub sidebands: Vec<f64>,
     form: Form,
     parts: Vec<Part>,
     book: Book,

@@ -6,7 +6,7 @@
 //! Flips of the axes are left out; [`Cavity::flips`] counts them.
 
 use super::Cavity;
-use super::part::{Element, Incidence, Mirror, Slab, ThermalLens, ThermalPlace};
+use super::part::{Element, Incidence, Mirror, Part, Slab, ThermalLens, ThermalPlace};
 use crate::numeric::Real;
 use crate::optics::PerPlane;
 use crate::optics::element::duct::Stretch;
@@ -132,6 +132,23 @@ impl Cavity {
         product
     }
 
+    /// Walks the feed from its start to the input mirror's outer face; a leg's part is counted in
+    /// the feed.
+    pub fn walk_feed<T: Real>(&self, values: &[T], mut visit: impl FnMut(Leg<T>)) {
+        for (index, part) in self.feed.iter().enumerate() {
+            part.walk(index, 1.0, values, &mut visit);
+        }
+    }
+
+    /// The product of all matrices of the feed; nothing happens without one.
+    pub fn feed_way<T: Real>(&self, values: &[T]) -> PerPlane<RayMatrix<T>> {
+        let mut product = PerPlane::both(RayMatrix::identity());
+        self.walk_feed(values, |leg| {
+            product = leg.after(product);
+        });
+        product
+    }
+
     /// The legs of one part; `share` is the part of a mirror's power that counts.
     #[inline(always)]
     pub(crate) fn walk_part<T: Real>(
@@ -141,11 +158,24 @@ impl Cavity {
         values: &[T],
         visit: &mut impl FnMut(Leg<T>),
     ) {
-        let part = &self.parts[index];
+        self.parts[index].walk(index, share, values, visit);
+    }
+}
+
+impl Part {
+    /// Its legs, under the given index; `share` is the part of a mirror's power that counts.
+    #[inline(always)]
+    fn walk<T: Real>(
+        &self,
+        index: usize,
+        share: f64,
+        values: &[T],
+        visit: &mut impl FnMut(Leg<T>),
+    ) {
         let mut leg = |piece| visit(Leg { part: index, piece });
-        match &part.element {
+        match &self.element {
             Element::Mirror(mirror) => {
-                let power = mirror_power(mirror, part.swapped, part.before.phase(values), values);
+                let power = mirror_power(mirror, self.swapped, self.before.phase(values), values);
                 leg(Piece::Kick(power.map(|p| p * -share)));
             }
             Element::Gap { length, medium } => {
@@ -157,8 +187,8 @@ impl Cavity {
             }
             Element::Slab(slab) => walk_slab(
                 slab,
-                part.swapped,
-                part.before.phase(values),
+                self.swapped,
+                self.before.phase(values),
                 values,
                 &mut leg,
             ),

@@ -226,6 +226,7 @@ pub(super) fn example(key: &str, kind: Kind) -> String {
         ("above" | "below" | "between" | "to" | "waist" | "spot", Kind::Length) => "150 um",
         ("clear", _) => "90 %",
         ("thickness", _) => "5 mm",
+        ("wavefront", _) => "0.5 1/m",
         ("travel", Kind::Length) => "1 mm",
         ("travel", Kind::Angle) => "0.1 deg",
         ("diameter" | "width" | "height", _) => "12.7 mm",

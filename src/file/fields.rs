@@ -184,6 +184,8 @@ impl<'c, 't> Fields<'c, 't> {
             "index" if what == "a slab" => {
                 "add index = 1.45, or material = \"fused silica\"".to_string()
             }
+            "cavity" => "add cavity = \"laser.toml\", the file of the cavity that it leaves".into(),
+            "mirror" => "add mirror = \"M2\", the mirror by which it leaves that cavity".into(),
             _ => format!("add {key} = {}", example(key, self.kind(key))),
         };
         self.must_have(

@@ -6,6 +6,7 @@ mod addresses;
 mod adjust;
 mod context;
 mod fields;
+mod general;
 mod keys;
 mod limits;
 mod medium;
@@ -14,6 +15,7 @@ mod parts;
 mod plain;
 mod reach;
 pub mod schema;
+mod sent;
 mod slab;
 pub mod starters;
 mod syntax;
@@ -27,13 +29,12 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-use crate::cavity::{Cavity, Draft, Form, Index, Polarisation};
+use crate::cavity::{Cavity, Draft, Form, Index};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
-use crate::quantity::{self, Kind, QuantityError};
 pub(crate) use context::nearest;
 use context::{Context, Override, in_order, shown, with_article};
 use fields::Fields;
-use keys::{FORMS, GENERAL, KINDS, TOP};
+use keys::{FORMS, KINDS, TOP};
 
 /// Largest file that is read, in bytes.
 pub const LARGEST_FILE: usize = 1 << 20;
@@ -180,25 +181,30 @@ fn read_file<'t>(
         "type" | "kind" => Some("the form is `form`: \"standing\" or \"ring\""),
         _ => None,
     });
-    read_general(&fields);
+    general::read_general(&fields);
     enter_globals(&fields);
     let form = read_form(&fields);
     let ambient = medium::read_medium(&fields, "ambient", Index::VACUUM);
     let defaults = read_defaults(&fields);
     let parts = read_path(&fields, ambient, defaults);
-    plain::read_plain(&fields, ambient, parts.as_deref().unwrap_or_default());
+    let plain = plain::read_plain(&fields);
+    let sent = sent::read_sent(&fields, ambient, parts.as_deref().unwrap_or_default());
     ties::resolve_all(&context, &ties);
+    if let Some(source) = &sent.source {
+        sent::check_source(&fields, source);
+    }
     report_unused_overrides(&context);
 
     let (Some(form), Some(parts)) = (form, parts) else {
         tolerance::read_tolerance(&fields, None);
         return Err(context.diagnostics.take());
     };
-    let spans = part_spans(top);
+    let spans = [part_spans(top, "path"), part_spans(top, "feed")];
     let draft = Draft {
         form,
         ambient,
         parts,
+        feed: sent.feed,
         book: context.book.borrow().clone(),
     };
     let in_order_so_far = context.diagnostics.borrow().is_empty();
@@ -211,9 +217,10 @@ fn read_file<'t>(
         faults
             .into_iter()
             .map(|fault| {
-                let (table, span) = match fault.part.and_then(|part| spans.get(part)) {
+                let list = usize::from(fault.in_feed);
+                let (table, span) = match fault.part.and_then(|part| spans[list].get(part)) {
                     Some((table, span)) => (Some(*table), span.clone()),
-                    None => (None, key_span(top, "path")),
+                    None => (None, key_span(top, ["path", "feed"][list])),
                 };
                 let span = fault
                     .key
@@ -224,15 +231,10 @@ fn read_file<'t>(
             .chain(context.diagnostics.take())
             .collect::<Vec<_>>()
     })?;
-    plain::check_input(&fields, &cavity);
-    if fields.word("polarisation", &keys::POLARISATIONS) == Some(1) {
-        cavity.polarisation = Polarisation::P;
-    }
-    let order = fields
-        .find("highest_order")
-        .and_then(|found| limits::read_order(&found.raw));
-    cavity.highest_order = order.unwrap_or(cavity.highest_order);
-    cavity.title = fields.text("title").map(|(text, _)| text);
+    plain.enter(&mut cavity);
+    cavity.input = sent::read_input(&fields, &cavity).unwrap_or(cavity.input);
+    cavity.source = sent.source;
+    cavity.sidebands = sent.sidebands;
     let limits = fields.list("limits", "limits = [ { of = \"margin\", above = 0.1 } ]");
     cavity.limits = limits
         .into_iter()
@@ -348,56 +350,6 @@ fn read_defaults<'t>(fields: &Fields<'_, 't>) -> Option<&'t DeTable<'t>> {
     Some(table)
 }
 
-fn read_general(fields: &Fields<'_, '_>) {
-    let advice = "write it like general = { length = \"0.2 mm\", roc = \"1 %\" }";
-    let Some((table, _)) = fields.table("general", advice) else {
-        return;
-    };
-    for (key, key_span, value) in in_order(table) {
-        let Some(kind) = toleranced_kind(key) else {
-            let help = match nearest(key, GENERAL.iter().map(|(key, _)| *key)) {
-                Some(near) => format!("did you mean `{near}`?"),
-                None => advice.to_string(),
-            };
-            fields.report(
-                Some(fields.context.place(key_span)),
-                format!("there is no general tolerance for `{}`", shown(key)),
-                &help,
-            );
-            continue;
-        };
-        let found = fields.context.found(value);
-        let rule = match &found.raw {
-            context::Raw::Text(text, _) => quantity::parse_general(text, kind),
-            _ => Err(QuantityError {
-                span: 0..0,
-                message: "a general tolerance is a text with a unit".into(),
-                help: Some(advice.into()),
-                bare: None,
-            }),
-        };
-        let rule = match rule {
-            Ok(rule) => rule,
-            Err(error) => {
-                fields.report(
-                    Some(found.place),
-                    error.about(&format!("`{key}`"), kind),
-                    error.help.as_deref().unwrap_or(advice),
-                );
-                continue;
-            }
-        };
-        fields.context.general.borrow_mut().insert(key.into(), rule);
-    }
-}
-
-fn toleranced_kind(key: &str) -> Option<Kind> {
-    GENERAL
-        .iter()
-        .find(|(name, _)| *name == key)
-        .map(|(_, kind)| *kind)
-}
-
 fn read_ties<'t>(context: &Context<'t>, top: &'t DeTable<'t>) -> Vec<ties::Written> {
     let advice = "write it like ties = [\"d4.length = d3.length\"]";
     let fields = Fields::new(context, top, 0..0);
@@ -466,9 +418,9 @@ fn report_unused_overrides(context: &Context<'_>) {
     }
 }
 
-/// Tables of the parts with their places, in order.
-fn part_spans<'t>(top: &'t DeTable<'t>) -> Vec<(&'t DeTable<'t>, Range<usize>)> {
-    let items = top.get("path").and_then(|path| path.get_ref().as_array());
+/// Tables of the parts of a list with their places, in order.
+fn part_spans<'t>(top: &'t DeTable<'t>, list: &str) -> Vec<(&'t DeTable<'t>, Range<usize>)> {
+    let items = top.get(list).and_then(|list| list.get_ref().as_array());
     items
         .into_iter()
         .flat_map(|items| items.iter())

@@ -146,17 +146,20 @@ pub(super) fn read_part<'t>(
 
     let fields = Fields::new(context, table, value.span()).knowing(keys);
     let name = read_name(&fields, kind)?;
-    if index.is_some() {
-        context.kinds.borrow_mut().insert(name.clone(), kind);
-    }
+    let mut kinds = context.kinds.borrow_mut();
+    kinds.entry(name.clone()).or_insert(kind);
+    drop(kinds);
     let defaults = defaults
         .and_then(|all| all.get(*kind))
         .and_then(|value| value.get_ref().as_table());
     let fields = fields.owned_by(&name).for_part(index, defaults);
     fields.refuse_unknown(&with_article(kind), |key| {
         advice(kind, key).or_else(|| {
-            let is_of_file = index.is_some() && TOP.iter().any(|known| known.name == key);
-            is_of_file.then_some("a key of the whole file stands above the first [[path]] block")
+            let is_of_file = TOP.iter().any(|known| known.name == key);
+            is_of_file.then_some(match index {
+                Some(_) => "a key of the whole file stands above the first [[path]] block",
+                None => "a key of the whole file stands above the first [[feed]] block",
+            })
         })
     });
     fields.text("notes");

@@ -1,11 +1,7 @@
 //! Cavity files out of arbitrary bytes, in the words of the format: the same bytes always write the
-//! same text, and what a proof of them is asked for, [`examine`], holds of every text whatever.
+//! same text.
 
 use std::fmt::Write;
-
-use modewright::analysis;
-use modewright::file::{self, Loaded, Refused};
-use modewright::report::{describe, render};
 
 /// Bytes as a stream of decisions; zeros when they run out.
 struct Choices<'a> {
@@ -411,77 +407,52 @@ pub fn cavity_text(bytes: &[u8]) -> String {
             "defaults = { mirror = { reflectance = \"99.95 %\", diameter = \"12.7 mm\" } }\n",
         );
     }
+    write_sent(&mut c, &mut text);
+    if c.once_in(16) {
+        let tolerance = c.one(&[
+            "shape = \"normal\"",
+            "groups = [ { of = [\"P0.roc\", \"E.roc\"], correlation = 0.5 } ]",
+            "groups = [ { of = [\"P1.length\", \"L.length\"] } ], cost = { \"L.length\" = 2 }",
+            "shapes = { \"L.length\" = \"normal\" }",
+            "adjust = [ { set = \"L.length\", travel = \"1 mm\", hold = \"margin\", to = 0.5 } ]",
+            "adjust = [ { set = \"P1.aoi\", travel = \"1 deg\", hold = \"P1.spot\" } ]",
+            "adjust = [ { set = \"temperature\", travel = \"5 K\", hold = \"L.least\" } ]",
+        ]);
+        writeln!(text, "tolerance = {{ {tolerance} }}").unwrap();
+    }
     text
 }
 
-/// Reads a text; where it is refused, every finding says something and points into the text.
-pub fn judged(text: &str) -> Result<Loaded, Refused> {
-    let result = file::load("any.toml", text, &[]);
-    if let Err(refused) = &result {
-        assert!(!refused.diagnostics.is_empty());
-        for diagnostic in &refused.diagnostics {
-            assert!(!diagnostic.message.is_empty());
-            if let Some(place) = &diagnostic.place {
-                let source = &refused.sources[place.source].text;
-                assert!(place.span.start <= place.span.end);
-                assert!(place.span.end <= source.len());
-            }
-        }
+/// What is sent into the cavity.
+fn write_sent(c: &mut Choices<'_>, text: &mut String) {
+    if c.once_in(8) {
+        let keys: &[Key] = match c.byte() % 5 {
+            0 => &[
+                ("spot", "length"),
+                ("wavefront", "curvature"),
+                ("at", "length"),
+            ],
+            1 => &[("mode_field", "length"), ("at", "length")],
+            2 => &[("power", "power")],
+            _ => &[("waist", "length"), ("at", "length"), ("m2", "index")],
+        };
+        let written: Vec<String> = keys
+            .iter()
+            .map(|(key, kind)| format!("{key} = {}", value(c, kind)))
+            .collect();
+        writeln!(text, "source = {{ {} }}", written.join(", ")).unwrap();
     }
-    result
-}
-
-/// Shows a refusal, as the command line would.
-pub fn show(refused: &Refused) -> String {
-    render::diagnostics::render(&refused.diagnostics, &refused.sources)
-}
-
-/// Reads a text; where it is refused, the refusal is fit to be shown.
-pub fn examine_load(text: &str) -> Option<Loaded> {
-    judged(text)
-        .inspect_err(|refused| assert!(!show(refused).is_empty()))
-        .ok()
-}
-
-/// Reads a text and, where it is a cavity, checks it: every number is one, and what has none says
-/// why. Returns whether it was a cavity.
-pub fn examine(text: &str) -> bool {
-    let Some(loaded) = examine_load(text) else {
-        return false;
-    };
-    let check = analysis::check::check(&loaded.cavity);
-    let json = render::json::render("check", "any.toml", &check).unwrap();
-    let value: serde_json::Value = serde_json::from_str(&json).unwrap();
-    assert_explained(&value, &mut Vec::new());
-    let told = render::terminal::render(&describe::check(&check));
-    for word in ["NaN", "inf "] {
-        assert!(!told.contains(word), "{told}");
-    }
-    true
-}
-
-/// What is null stands beside a reason.
-fn assert_explained(value: &serde_json::Value, path: &mut Vec<String>) {
-    match value {
-        serde_json::Value::Object(fields) => {
-            let explained = fields.get("why").is_some_and(serde_json::Value::is_string);
-            for (key, field) in fields {
-                assert!(
-                    explained || !field.is_null(),
-                    "{}.{key} is null",
-                    path.join(".")
-                );
-                path.push(key.clone());
-                assert_explained(field, path);
-                path.pop();
-            }
+    if c.once_in(12) {
+        text.push_str("feed = [\n");
+        for index in 0..c.byte() % 4 {
+            // A mirror of a feed needs the angle that only some of these have.
+            let kind = if c.slips() {
+                0
+            } else {
+                1 + c.byte() % (PARTS.len() - 1)
+            };
+            write_part(c, text, kind, &format!("F{index}"), false);
         }
-        serde_json::Value::Array(items) => {
-            for item in items {
-                assert!(!item.is_null(), "an entry of {} is null", path.join("."));
-                assert_explained(item, path);
-            }
-        }
-        _ => {}
+        text.push_str("]\n");
     }
 }

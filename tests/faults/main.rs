@@ -3,5 +3,6 @@
 
 mod gallery;
 mod grammar;
+mod judge;
 mod random;
 mod robust;

@@ -2,7 +2,8 @@
 
 use proptest::prelude::*;
 
-use crate::grammar::{cavity_text, examine, examine_load};
+use crate::grammar::cavity_text;
+use crate::judge::{examine, examine_load};
 
 /// As many cases as `PROPTEST_CASES` asks for.
 fn config() -> ProptestConfig {

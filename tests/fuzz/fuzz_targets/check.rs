@@ -4,7 +4,9 @@
 
 #[path = "../../faults/grammar.rs"]
 mod grammar;
+#[path = "../../faults/judge.rs"]
+mod judge;
 
 libfuzzer_sys::fuzz_target!(|bytes: &[u8]| {
-    grammar::examine(&grammar::cavity_text(bytes));
+    judge::examine(&grammar::cavity_text(bytes));
 });

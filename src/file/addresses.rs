@@ -72,7 +72,8 @@ impl Fields<'_, '_> {
         if entry.spread != Spread::Exact {
             return Some(slot);
         }
-        if self.context.overridden(address).is_none() {
+        let is_told = self.context.lost_general(entry.key);
+        if self.context.overridden(address).is_none() && !is_told {
             let example = match entry.kind {
                 Kind::Radius | Kind::Face if entry.value == 0.0 => "flat ± 0.003 1/m",
                 Kind::Angle | Kind::SlabAngle => "8 deg ± 0.1 deg",

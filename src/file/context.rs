@@ -56,6 +56,8 @@ pub(super) struct Context<'t> {
     pub kinds: RefCell<HashMap<String, &'static str>>,
     /// General tolerances by key.
     pub general: RefCell<HashMap<String, General>>,
+    /// Keys whose general tolerance was refused: their lack of a spread is told already.
+    pub general_refused: RefCell<HashSet<String>>,
 }
 
 impl<'t> Context<'t> {
@@ -186,6 +188,17 @@ impl<'t> Context<'t> {
         }
     }
 
+    /// Notes that the general tolerance of a key cannot be used.
+    pub fn refuse_general(&self, key: &str) {
+        let base = of_both_planes(key).to_string();
+        self.general_refused.borrow_mut().insert(base);
+    }
+
+    /// Whether a number with this key has no spread because of a mistake told already.
+    pub fn lost_general(&self, key: &str) -> bool {
+        self.general_refused.borrow().contains(of_both_planes(key))
+    }
+
     /// The spread of a quantity: its own or, where it has none, the general tolerance of its key.
     pub fn spread(
         &self,
@@ -198,9 +211,7 @@ impl<'t> Context<'t> {
         if own != Spread::Exact {
             return own;
         }
-        let base = key
-            .trim_end_matches("_tangential")
-            .trim_end_matches("_sagittal");
+        let base = of_both_planes(key);
         let general = self.general.borrow();
         let Some(rule) = general.get(key).or_else(|| general.get(base)) else {
             return Spread::Exact;
@@ -214,9 +225,16 @@ impl<'t> Context<'t> {
                 ),
                 "give it a tolerance of its own",
             );
+            self.refuse_general(key);
             Spread::Exact
         })
     }
+}
+
+/// The key for both planes that a key for one of them stands beside.
+fn of_both_planes(key: &str) -> &str {
+    key.trim_end_matches("_tangential")
+        .trim_end_matches("_sagittal")
 }
 
 /// A well-written value of a key, as it stands in a file.

@@ -37,6 +37,7 @@ pub(super) fn read_general(fields: &Fields<'_, '_>) {
         let rule = match rule {
             Ok(rule) => rule,
             Err(error) => {
+                fields.context.refuse_general(key);
                 fields.report(
                     Some(found.place),
                     error.about(&format!("`{key}`"), kind),

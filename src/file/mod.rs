@@ -17,6 +17,7 @@ mod reach;
 pub mod schema;
 mod sent;
 mod slab;
+mod source;
 pub mod starters;
 mod syntax;
 mod ties;
@@ -125,6 +126,7 @@ fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
         tied: HashSet::new(),
         kinds: RefCell::default(),
         general: RefCell::default(),
+        general_refused: RefCell::default(),
     };
     read_file(context, &table)
 }
@@ -191,7 +193,7 @@ fn read_file<'t>(
     let sent = sent::read_sent(&fields, ambient, parts.as_deref().unwrap_or_default());
     ties::resolve_all(&context, &ties);
     if let Some(source) = &sent.source {
-        sent::check_source(&fields, source);
+        source::check_source(&fields, source);
     }
     report_unused_overrides(&context);
 

@@ -28,6 +28,8 @@ pub enum Ticks {
     Even(Scale),
     /// By decades, each number with its own unit of these.
     Decades(&'static [Scale]),
+    /// By decades, in one unit that the title names.
+    Powers(Scale),
 }
 
 /// How a curve is drawn, so that two differ in print too.
@@ -37,6 +39,30 @@ pub enum Stroke {
     Solid,
     /// In dashes.
     Dashed,
+    /// In dots.
+    Dotted,
+    /// In dashes with a dot between.
+    DashDotted,
+}
+
+impl Stroke {
+    /// All of them, the plainest first.
+    pub const ALL: [Stroke; 4] = [
+        Stroke::Solid,
+        Stroke::Dashed,
+        Stroke::Dotted,
+        Stroke::DashDotted,
+    ];
+
+    /// How it is named in words.
+    pub fn name(self) -> &'static str {
+        match self {
+            Stroke::Solid => "solid",
+            Stroke::Dashed => "dashed",
+            Stroke::Dotted => "dotted",
+            Stroke::DashDotted => "dash-dotted",
+        }
+    }
 }
 
 /// A curve, or a piece of one.

@@ -25,6 +25,51 @@ pub const LENGTHS: [Scale; 5] = [
 /// Units of angles, smallest first.
 pub const ANGLES: [Scale; 3] = [scale("µrad", 1e-6), scale("mrad", 1e-3), scale("rad", 1.0)];
 
+/// Units of frequencies, smallest first.
+pub const FREQUENCIES: [Scale; 6] = [
+    scale("mHz", 1e-3),
+    scale("Hz", 1.0),
+    scale("kHz", 1e3),
+    scale("MHz", 1e6),
+    scale("GHz", 1e9),
+    scale("THz", 1e12),
+];
+
+/// Units of powers, smallest first.
+pub const POWERS: [Scale; 6] = [
+    scale("nW", 1e-9),
+    scale("µW", 1e-6),
+    scale("mW", 1e-3),
+    scale("W", 1.0),
+    scale("kW", 1e3),
+    scale("MW", 1e6),
+];
+
+/// Units of ratios, smallest first.
+pub const RATIOS: [Scale; 2] = [scale("ppm", 1e-6), scale("%", 1e-2)];
+
+/// Units of curvatures and of the strengths of lenses and ducts, smallest first.
+pub const CURVATURES: [Scale; 3] = [scale("1/km", 1e-3), scale("1/m", 1.0), scale("1/mm", 1e3)];
+
+/// Decibels, whose numbers are already counted in them.
+pub const DECIBELS: [Scale; 1] = [scale("dB", 1.0)];
+
+/// Numbers without a unit; powers of ten where they are too large or small to be read.
+pub const NUMBERS: [Scale; 9] = [
+    scale("10⁻¹²", 1e-12),
+    scale("10⁻⁹", 1e-9),
+    scale("10⁻⁶", 1e-6),
+    scale("10⁻³", 1e-3),
+    PLAIN,
+    scale("10⁶", 1e6),
+    scale("10⁹", 1e9),
+    scale("10¹²", 1e12),
+    scale("10¹⁵", 1e15),
+];
+
+/// A number as it is.
+pub const PLAIN: Scale = scale("", 1.0);
+
 /// In SI units, what is rounding and not a size: less than any length or angle in a cavity.
 pub const NOTHING: f64 = 1e-13;
 

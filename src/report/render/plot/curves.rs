@@ -1,12 +1,12 @@
 //! Curves, apertures and marks within the panels.
 
+use super::dashes::{self, stroke};
 use super::layout::Placed;
 use super::place::Occupied;
 use super::scene::{Ink, Item, Scene};
 use crate::report::figure::{Glyph, Stroke};
 
 pub(super) const LINE: f64 = 2.0;
-const DASH: (f64, f64) = (9.0, 5.0);
 pub(super) const DOT: f64 = 3.2;
 
 /// Draws curves, apertures and marks.
@@ -31,33 +31,27 @@ pub(super) fn draw(scene: &mut Scene, occupied: &mut Occupied, panels: &[Placed<
     }
     for placed in panels {
         for (stroke, at) in placed.panel.marks.iter().flat_map(|mark| &mark.places) {
-            let at = placed.point(*at);
-            for (ink, filled) in match stroke {
-                Stroke::Solid => [(Ink::Solid, true), (Ink::Solid, false)],
-                Stroke::Dashed => [(Ink::Paper, true), (Ink::Dashed, false)],
-            } {
-                scene.items.push(Item::Dot {
-                    at,
-                    radius: DOT,
-                    ink,
-                    filled,
-                });
-            }
+            dot(scene, placed.point(*at), *stroke);
         }
     }
 }
 
-pub(super) fn stroke(scene: &mut Scene, points: &[[f64; 2]], stroke: Stroke, width: f64) {
-    let (ink, dashes) = match stroke {
-        Stroke::Solid => (Ink::Solid, None),
-        Stroke::Dashed => (Ink::Dashed, Some(DASH)),
+/// A marked place on a curve: filled on a solid one, open on the others.
+pub(super) fn dot(scene: &mut Scene, at: [f64; 2], stroke: Stroke) {
+    let ink = dashes::ink(stroke);
+    let within = if stroke == Stroke::Solid {
+        ink
+    } else {
+        Ink::Paper
     };
-    scene.items.push(Item::Line {
-        points: points.to_vec(),
-        ink,
-        width,
-        dashes,
-    });
+    for (ink, filled) in [(within, true), (ink, false)] {
+        scene.items.push(Item::Dot {
+            at,
+            radius: DOT,
+            ink,
+            filled,
+        });
+    }
 }
 
 /// What an aperture takes away of the height, where the axis reaches that far.

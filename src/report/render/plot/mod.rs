@@ -4,6 +4,7 @@
 //! judged without looking, and then painted.
 
 mod curves;
+mod dashes;
 mod glyph;
 mod labels;
 mod layout;

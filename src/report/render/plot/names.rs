@@ -1,6 +1,7 @@
 //! What is written at curves and marks: the radii of waists, then the names of the curves.
 
-use super::curves::{DOT, LINE, stroke};
+use super::curves::{DOT, LINE};
+use super::dashes::stroke;
 use super::layout::Placed;
 use super::place::{Candidate, Occupied};
 use super::scene::{Anchor, Ink, Rect, Scene};
@@ -43,11 +44,7 @@ pub(super) fn write(
         )),
     }
     for curve in write_curves(scene, occupied, panels) {
-        let line = match curve.stroke {
-            Stroke::Solid => "solid",
-            Stroke::Dashed => "dashed",
-        };
-        notes.push(format!("{line} line: {}", curve.label));
+        notes.push(format!("{} line: {}", curve.stroke.name(), curve.label));
     }
     notes
 }
@@ -159,8 +156,8 @@ fn name_curve(
         .collect();
     shares.sort_by(|a, b| (a - 0.5).abs().total_cmp(&(b - 0.5).abs()));
     let up_first = match style {
-        Stroke::Solid => [-1.0, 1.0],
-        Stroke::Dashed => [1.0, -1.0],
+        Stroke::Solid | Stroke::Dotted => [-1.0, 1.0],
+        Stroke::Dashed | Stroke::DashDotted => [1.0, -1.0],
     };
     let height = |x: f64| points.iter().find(|p| p[0] >= x).map(|p| p[1]);
     let at = |x: f64, y: f64| Candidate {

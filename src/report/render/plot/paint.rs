@@ -25,6 +25,8 @@ fn colour(ink: Ink) -> RGBColor {
         Ink::Paper => RGBColor(255, 255, 255),
         Ink::Solid => RGBColor(10, 60, 120),
         Ink::Dashed => RGBColor(205, 95, 0),
+        Ink::Dotted => RGBColor(0, 118, 92),
+        Ink::DashDotted => RGBColor(142, 52, 122),
         Ink::Alarm => RGBColor(165, 20, 20),
     }
 }

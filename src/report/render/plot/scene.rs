@@ -82,6 +82,10 @@ pub enum Ink {
     Solid,
     /// The dashed curve.
     Dashed,
+    /// The dotted curve.
+    Dotted,
+    /// The dash-dotted curve.
+    DashDotted,
     /// What is wrong.
     Alarm,
 }

@@ -1,13 +1,16 @@
 //! Which numbers stand at an axis.
 
 use crate::report::figure::{Axis, Ticks};
-use crate::report::number::{Scale, fixed, significant};
+use crate::report::number::{Scale, fixed, plain};
 
 /// A number at an axis: where, and what is written.
 pub(super) type Tick = (f64, String);
 
 /// Decades up to which the numbers between them are written too.
 const FEW_DECADES: f64 = 3.0;
+
+/// Decades up to which hardly one of those numbers might lie on the axis.
+const ONE_DECADE: f64 = 1.0;
 
 /// How much closer than asked for the numbers may stand for the sake of a round step.
 const CLOSER: f64 = 0.7;
@@ -16,7 +19,8 @@ const CLOSER: f64 = 0.7;
 pub(super) fn ticks(axis: &Axis, about: f64) -> Vec<Tick> {
     match axis.ticks {
         Ticks::Even(unit) => even(axis, unit, about),
-        Ticks::Decades(units) => decades(axis, units),
+        Ticks::Decades(units) => decades(axis, |value| with_unit(value, units), about),
+        Ticks::Powers(unit) => decades(axis, |value| power(value / unit.size), about),
     }
 }
 
@@ -24,7 +28,9 @@ pub(super) fn ticks(axis: &Axis, about: f64) -> Vec<Tick> {
 pub(super) fn share(axis: &Axis, value: f64) -> f64 {
     match axis.ticks {
         Ticks::Even(_) => (value - axis.from) / (axis.to - axis.from),
-        Ticks::Decades(_) => (value / axis.from).ln() / (axis.to / axis.from).ln(),
+        Ticks::Decades(_) | Ticks::Powers(_) => {
+            (value / axis.from).ln() / (axis.to / axis.from).ln()
+        }
     }
 }
 
@@ -55,29 +61,58 @@ fn even(axis: &Axis, unit: Scale, about: f64) -> Vec<Tick> {
         .collect()
 }
 
-fn decades(axis: &Axis, units: &[Scale]) -> Vec<Tick> {
-    let between: &[f64] = if (axis.to / axis.from).log10() <= FEW_DECADES {
+fn decades(axis: &Axis, text: impl Fn(f64) -> String, about: f64) -> Vec<Tick> {
+    let span = (axis.to / axis.from).log10();
+    let between: &[f64] = if span <= ONE_DECADE {
+        &[1.0, 1.5, 2.0, 3.0, 4.0, 5.0, 6.0, 7.0, 8.0, 9.0]
+    } else if span <= FEW_DECADES {
         &[1.0, 2.0, 5.0]
     } else {
         &[1.0]
     };
+    // Of very many decades every second, third, ... is written.
+    let every = (span / (2.0 * about.max(1.0))).ceil().max(1.0) as i32;
     let first = axis.from.log10().floor() as i32;
     let last = axis.to.log10().ceil() as i32;
     (first..=last)
+        .filter(|power| power % every == 0)
         .flat_map(|power| between.iter().map(move |digit| digit * 10_f64.powi(power)))
         .filter(|value| (axis.from..=axis.to).contains(value))
-        .map(|value| {
-            let unit = units
-                .iter()
-                .rev()
-                .find(|unit| value >= unit.size * (1.0 - 1e-9))
-                .or(units.first());
-            let text = unit.map_or_else(String::new, |unit| {
-                format!("{} {}", significant(value / unit.size, 1), unit.symbol)
-            });
-            (value, text)
-        })
+        .map(|value| (value, text(value)))
         .collect()
+}
+
+fn with_unit(value: f64, units: &[Scale]) -> String {
+    let unit = units
+        .iter()
+        .rev()
+        .find(|unit| value >= unit.size * (1.0 - 1e-9))
+        .or(units.first());
+    unit.map_or_else(String::new, |unit| {
+        format!("{} {}", plain(value / unit.size, 2), unit.symbol)
+    })
+}
+
+/// A round number, as a power of ten where it would have many zeros.
+fn power(value: f64) -> String {
+    let exponent = (value.log10() + 1e-9).floor();
+    if (-3.0..=4.0).contains(&exponent) {
+        return plain(value, 2);
+    }
+    let digit = plain(value / 10_f64.powf(exponent), 2);
+    let raised: String = format!("{exponent}").chars().map(superscript).collect();
+    if digit == "1" {
+        format!("10{raised}")
+    } else {
+        format!("{digit}·10{raised}")
+    }
+}
+
+fn superscript(digit: char) -> char {
+    const RAISED: [char; 10] = ['⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹'];
+    digit
+        .to_digit(10)
+        .map_or('⁻', |digit| RAISED[digit as usize])
 }
 
 #[cfg(test)]

@@ -3,8 +3,7 @@
 use std::path::{Path, PathBuf};
 
 use super::{Answer, FAULT, WRONG_INPUT, output};
-use crate::report::figure::Figure;
-use crate::report::render::plot;
+use crate::report::render::plot::{self, Picture};
 
 /// Where a picture goes and what it is, by the ending of its name.
 #[derive(Clone, Debug)]
@@ -50,12 +49,12 @@ impl Target {
         })
     }
 
-    /// Paints the figure and writes it.
-    pub(super) fn write(&self, figure: &Figure) -> Result<(), Answer> {
+    /// Paints the picture and writes it.
+    pub(super) fn write(&self, picture: &dyn Picture) -> Result<(), Answer> {
         let painted = match self.format {
-            Format::Svg => plot::svg(figure).map(String::into_bytes),
+            Format::Svg => plot::svg(picture).map(String::into_bytes),
             #[cfg(feature = "png")]
-            Format::Png => plot::png(figure),
+            Format::Png => plot::png(picture),
         };
         let bytes = painted.map_err(|error| Answer {
             out: String::new(),

@@ -2,16 +2,19 @@
 
 use modewright::report::render::plot::{Ink, Item, Rect, Scene, scene};
 
-use crate::{cavities, drawn};
+use crate::{cavities, charts, drawn};
 
 /// Text may stand this much over the edge of what is measured, in pixels.
 const ROUNDING: f64 = 1e-6;
 
 fn pages() -> Vec<(&'static str, Scene)> {
-    cavities::all()
+    let beams = cavities::all()
         .into_iter()
-        .map(|(name, text)| (name, scene(&drawn(&text).figure).unwrap()))
-        .collect()
+        .map(|(name, text)| (name, scene(&drawn(&text).figure).unwrap()));
+    let charts = charts::all()
+        .into_iter()
+        .map(|(name, chart)| (name, scene(&chart).unwrap()));
+    beams.chain(charts).collect()
 }
 
 #[test]
@@ -42,7 +45,7 @@ fn curves_stay_inside_their_frames() {
         let curves = page.items.iter().filter_map(|item| match item {
             Item::Line {
                 points,
-                ink: Ink::Solid | Ink::Dashed,
+                ink: Ink::Solid | Ink::Dashed | Ink::Dotted | Ink::DashDotted,
                 ..
             } => Some(points),
             _ => None,

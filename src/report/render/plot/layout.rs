@@ -2,28 +2,22 @@
 
 use super::glyph;
 use super::labels::{self, Band};
+use super::page::{self, CAPTION, Heading, NUMBER, TITLE, WIDTH};
 use super::place::Occupied;
 use super::scene::{Anchor, Ink, Rect, Scene};
 use super::ticks::{share, ticks};
 use super::{curves, names, text};
 use crate::report::figure::{Axis, Figure, Panel, Symbol};
 
-const WIDTH: f64 = 1000.0;
 /// Margins: the vertical axis has its numbers on the left.
 const LEFT: f64 = 78.0;
 const RIGHT: f64 = 22.0;
-const TOP: f64 = 12.0;
 /// Height of the panels.
 const PANEL: f64 = 360.0;
 const EMPTY_PANEL: f64 = 110.0;
 /// Space between panels, and within one on either side.
 const BETWEEN: f64 = 14.0;
 const INSET: f64 = 16.0;
-
-const TITLE: f64 = 17.0;
-const SMALL: f64 = 11.0;
-const NUMBER: f64 = 11.5;
-const CAPTION: f64 = 12.5;
 
 /// A panel at its place on the page.
 pub(super) struct Placed<'a> {
@@ -56,7 +50,13 @@ pub(super) fn scene(figure: &Figure) -> Scene {
         width,
         ..Scene::default()
     };
-    let mut top = heading(&mut scene, figure);
+    let heading = Heading {
+        title: &figure.title,
+        verdict: &figure.verdict,
+        particulars: &figure.particulars,
+        missing: &figure.missing,
+    };
+    let mut top = heading.draw(&mut scene);
     let mut panels = placed(figure, width);
     let symbols: Vec<(&Symbol, f64)> = panels
         .iter()
@@ -87,13 +87,15 @@ pub(super) fn scene(figure: &Figure) -> Scene {
     }
     band.draw(&mut scene, top);
     curves::draw(&mut scene, &mut occupied, &panels);
-    let notes = names::write(&mut scene, &mut occupied, &panels);
+    let more = names::write(&mut scene, &mut occupied, &panels);
     frames(&mut scene, &panels);
     let bottom = axes(&mut scene, figure, &panels);
     if figure.y.is_none() {
         nothing_to_draw(&mut scene, figure, area_top);
     }
-    footing(&mut scene, figure, bottom, notes);
+    let notes = [figure.notes.clone(), more].concat();
+    let ends = [LEFT, scene.width - RIGHT];
+    page::footing(&mut scene, bottom, ends, &notes);
     scene
 }
 
@@ -120,29 +122,6 @@ fn placed(figure: &Figure, width: f64) -> Vec<Placed<'_>> {
             }
         })
         .collect()
-}
-
-/// Title, verdict and particulars; gives back where they end.
-fn heading(scene: &mut Scene, figure: &Figure) -> f64 {
-    let room = scene.width - 40.0;
-    let verdict = format!(" — {}", figure.verdict);
-    let name_room = room - text::length(&verdict, TITLE);
-    let title = text::shortened(&figure.title, TITLE, name_room) + &verdict;
-    let mut y = TOP + 0.5 * text::height(TITLE);
-    scene.text([20.0, y], Anchor::Start, TITLE, Ink::Black, &title);
-    y += 0.5 * text::height(TITLE) + 4.0;
-    let mut line = |content: &str, ink| {
-        for content in text::wrapped(content, SMALL, room) {
-            y += 0.5 * text::height(SMALL);
-            scene.text([20.0, y], Anchor::Start, SMALL, ink, &content);
-            y += 0.5 * text::height(SMALL) + 2.0;
-        }
-    };
-    line(&figure.particulars, Ink::Grey);
-    for missing in &figure.missing {
-        line(&format!("! {missing}"), Ink::Alarm);
-    }
-    y + 8.0
 }
 
 /// What lies beneath the curves: bodies, guides, the grid.
@@ -282,16 +261,4 @@ fn nothing_to_draw(scene: &mut Scene, figure: &Figure, area_top: f64) {
     };
     line("no beam to draw", TITLE);
     line(&figure.verdict, CAPTION);
-}
-
-fn footing(scene: &mut Scene, figure: &Figure, top: f64, more: Vec<String>) {
-    let notes = [figure.notes.clone(), more].concat();
-    let mut y = top;
-    let room = scene.width - LEFT - RIGHT;
-    for line in text::wrapped(&notes.join("; "), SMALL, room) {
-        y += 0.5 * text::height(SMALL);
-        scene.text([LEFT, y], Anchor::Start, SMALL, Ink::Grey, &line);
-        y += 0.5 * text::height(SMALL) + 2.0;
-    }
-    scene.height = (y + 8.0).ceil();
 }

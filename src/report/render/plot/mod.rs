@@ -1,16 +1,21 @@
-//! A figure as a picture: SVG text, and that text as PNG.
+//! A figure or a chart as a picture: SVG text, and that text as PNG.
 //!
-//! A figure is first laid out as a [`Scene`] of lines and texts at their places, which can be
+//! It is first laid out as a [`Scene`] of lines and texts at their places, which can be
 //! judged without looking, and then painted.
 
+mod cells;
+mod chart;
+mod clip;
 mod curves;
 mod dashes;
 mod glyph;
 mod labels;
 mod layout;
 mod names;
+mod page;
 mod paint;
 mod place;
+mod ramp;
 #[cfg(feature = "png")]
 mod raster;
 mod scene;
@@ -20,8 +25,9 @@ mod ticks;
 
 use std::fmt;
 
+use crate::report::chart::Chart;
 use crate::report::figure::Figure;
-pub use scene::{Anchor, Ink, Item, Rect, Scene};
+pub use scene::{Anchor, Ink, Item, LEVELS, Rect, Scene};
 
 /// Why a picture could not be painted: a fault of this program, not of its input.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -41,29 +47,47 @@ impl PaintError {
     }
 }
 
-/// The figure laid out.
+/// A neutral description that can be painted.
+pub trait Picture {
+    /// Everything of it at its place on a page, with the bundled font at hand.
+    fn lay_out(&self) -> Scene;
+}
+
+impl Picture for Figure {
+    fn lay_out(&self) -> Scene {
+        layout::scene(self)
+    }
+}
+
+impl Picture for Chart {
+    fn lay_out(&self) -> Scene {
+        chart::scene(self)
+    }
+}
+
+/// The picture laid out.
 ///
 /// # Errors
-/// A fault of the bundled font, which no figure can cause.
-pub fn scene(figure: &Figure) -> Result<Scene, PaintError> {
+/// A fault of the bundled font, which no picture can cause.
+pub fn scene(picture: &dyn Picture) -> Result<Scene, PaintError> {
     text::register_font()?;
-    Ok(layout::scene(figure))
+    Ok(picture.lay_out())
 }
 
-/// The figure as the text of an SVG file.
+/// The picture as the text of an SVG file.
 ///
 /// # Errors
-/// A fault of the painter, which no figure can cause.
-pub fn svg(figure: &Figure) -> Result<String, PaintError> {
-    paint::svg(&scene(figure)?)
+/// A fault of the painter, which no picture can cause.
+pub fn svg(picture: &dyn Picture) -> Result<String, PaintError> {
+    paint::svg(&scene(picture)?)
 }
 
-/// The figure as the bytes of a PNG file.
+/// The picture as the bytes of a PNG file.
 ///
 /// # Errors
-/// A fault of the painter, which no figure can cause.
+/// A fault of the painter, which no picture can cause.
 #[cfg(feature = "png")]
-pub fn png(figure: &Figure) -> Result<Vec<u8>, PaintError> {
-    let scene = scene(figure)?;
+pub fn png(picture: &dyn Picture) -> Result<Vec<u8>, PaintError> {
+    let scene = scene(picture)?;
     raster::png(&paint::svg(&scene)?, &scene)
 }

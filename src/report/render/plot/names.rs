@@ -56,7 +56,9 @@ fn write_marks(scene: &mut Scene, occupied: &mut Occupied, panels: &[Placed<'_>]
         for mark in &placed.panel.marks {
             let points = mark.places.iter().map(|(_, at)| placed.point(*at));
             let lowest = points.reduce(|a, b| [0.5 * (a[0] + b[0]), a[1].max(b[1])]);
-            if !lowest.is_some_and(|at| name_mark(scene, occupied, placed, at, &mark.label)) {
+            if !lowest
+                .is_some_and(|at| name_mark(scene, occupied, placed.area, at, &mark.label, false))
+            {
                 unnamed += 1;
             }
         }
@@ -80,7 +82,15 @@ fn write_curves<'a>(
             if named.contains(&curve.label.as_str()) {
                 continue;
             }
-            if name_curve(scene, occupied, placed, &curve.label, curve.stroke) {
+            let points: Vec<[f64; 2]> = placed
+                .panel
+                .curves
+                .iter()
+                .filter(|other| other.label == curve.label)
+                .flat_map(|curve| curve.points.iter().map(|point| placed.point(*point)))
+                .collect();
+            let name = (curve.label.as_str(), curve.stroke);
+            if name_curve(scene, occupied, placed.area, &points, name, false) {
                 named.push(&curve.label);
                 unnamed.retain(|other| other.label != curve.label);
             } else if !unnamed.iter().any(|other| other.label == curve.label) {
@@ -91,12 +101,14 @@ fn write_curves<'a>(
     unnamed
 }
 
-fn name_mark(
+/// Writes what a mark means near it, with a line to it where it is far.
+pub(super) fn name_mark(
     scene: &mut Scene,
     occupied: &mut Occupied,
-    placed: &Placed<'_>,
+    within: Rect,
     [x, y]: [f64; 2],
     label: &str,
+    with_ground: bool,
 ) -> bool {
     let length = text::length(label, WAIST);
     let half = 0.5 * text::height(WAIST);
@@ -119,11 +131,14 @@ fn name_mark(
             })
         })
     });
-    let Some(chosen) = occupied.take(placed.area.grown(-2.0), candidates) else {
+    let Some(chosen) = occupied.take(within.grown(-2.0), candidates) else {
         return false;
     };
     if let Some(leader) = chosen.leader {
         scene.line(&leader, Ink::Grey, 0.7);
+    }
+    if with_ground {
+        ground(scene, chosen.area);
     }
     let middle = 0.5 * (chosen.area.top + chosen.area.bottom);
     let at = [chosen.area.left, middle];
@@ -131,25 +146,22 @@ fn name_mark(
     true
 }
 
-fn name_curve(
+/// Writes a curve's name over, under or beside it, with a piece of its line.
+///
+/// The points run from left to right, closely.
+pub(super) fn name_curve(
     scene: &mut Scene,
     occupied: &mut Occupied,
-    placed: &Placed<'_>,
-    label: &str,
-    style: Stroke,
+    within: Rect,
+    points: &[[f64; 2]],
+    (label, style): (&str, Stroke),
+    with_ground: bool,
 ) -> bool {
     const PLACES: i32 = 40;
     const STEEP: f64 = 60.0;
-    let points: Vec<[f64; 2]> = placed
-        .panel
-        .curves
-        .iter()
-        .filter(|curve| curve.label == label)
-        .flat_map(|curve| curve.points.iter().map(|point| placed.point(*point)))
-        .collect();
     let length = SAMPLE + 6.0 + text::length(label, LABEL);
     let half = 0.5 * text::height(LABEL);
-    let width = placed.area.right - placed.area.left;
+    let width = within.right - within.left;
     // From the middle outwards, because the ends are crowded with optics.
     let mut shares: Vec<f64> = (1..PLACES)
         .map(|place| f64::from(place) / f64::from(PLACES))
@@ -175,7 +187,7 @@ fn name_curve(
         .flat_map(|step| up_first.map(|side| (step, side)))
     {
         candidates.extend(shares.iter().filter_map(|share| {
-            let x = placed.area.left + share * width;
+            let x = within.left + share * width;
             let ends = [height(x - 0.5 * length)?, height(x + 0.5 * length)?];
             let here = height(x)?;
             // Over or under a steep curve a name seems to belong to nothing.
@@ -186,18 +198,33 @@ fn name_curve(
     // Beside a steep curve there is room where over and under it there is none.
     for side in [1.0, -1.0] {
         candidates.extend(shares.iter().filter_map(|share| {
-            let x = placed.area.left + share * width;
+            let x = within.left + share * width;
             Some(at(x + side * (0.5 * length + 10.0), height(x)?))
         }));
     }
-    let Some(chosen) = occupied.take_clear(placed.area.grown(-2.0), candidates) else {
+    let Some(chosen) = occupied.take_clear(within.grown(-2.0), candidates) else {
         return false;
     };
     let area = chosen.area;
+    if with_ground {
+        ground(scene, area);
+    }
     let y = 0.5 * (area.top + area.bottom);
     let sample = [[area.left, y], [area.left + SAMPLE, y]];
     stroke(scene, &sample, style, LINE);
     let at = [area.left + SAMPLE + 6.0, y];
     scene.text(at, Anchor::Start, LABEL, Ink::Black, label);
     true
+}
+
+/// Paper behind a label over a map.
+fn ground(scene: &mut Scene, area: Rect) {
+    let area = area.grown(1.5);
+    let corners = [
+        [area.left, area.bottom],
+        [area.right, area.bottom],
+        [area.right, area.top],
+        [area.left, area.top],
+    ];
+    scene.area(&corners, Ink::Paper);
 }

@@ -9,6 +9,7 @@ use plotters::style::FontTransform;
 use plotters::style::text_anchor::{HPos, Pos, VPos};
 
 use super::PaintError;
+use super::cells;
 use super::scene::{Anchor, Ink, Item, Scene};
 use super::text::{FAMILY, PER_LETTER};
 
@@ -27,6 +28,7 @@ fn colour(ink: Ink) -> RGBColor {
         Ink::Dashed => RGBColor(205, 95, 0),
         Ink::Dotted => RGBColor(0, 118, 92),
         Ink::DashDotted => RGBColor(142, 52, 122),
+        Ink::Bar => RGBColor(158, 186, 212),
         Ink::Alarm => RGBColor(165, 20, 20),
     }
 }
@@ -39,23 +41,64 @@ fn point([x, y]: [f64; 2]) -> (i32, i32) {
     (large(x), large(y))
 }
 
+/// How much of the ground a wash hides.
+const WASH: f64 = 0.22;
+
 /// The scene as the text of an SVG file.
 pub(super) fn svg(scene: &Scene) -> Result<String, PaintError> {
     let (width, height) = (scene.width.ceil(), scene.height.ceil());
     let size = (large(width) as u32, large(height) as u32);
+    // The plotting crate knows no cells: what lies between them is painted by itself.
     let mut painted = String::new();
+    for (index, items) in scene
+        .items
+        .split_inclusive(|item| matches!(item, Item::Cells { .. }))
+        .enumerate()
     {
-        let page = SVGBackend::with_string(&mut painted, size).into_drawing_area();
-        page.fill(&colour(Ink::Paper))
-            .map_err(PaintError::because)?;
-        for item in &scene.items {
-            paint(&page, item).map_err(PaintError::because)?;
+        let part = page(size, items, index == 0)?;
+        match painted.rfind(END) {
+            None => painted = part,
+            Some(end) => {
+                let start = part.find(">\n").map_or(0, |at| at + 2);
+                painted.replace_range(end.., &part[start..]);
+            }
         }
-        page.present().map_err(PaintError::because)?;
+        if let (
+            Some(Item::Cells {
+                area,
+                columns,
+                levels,
+            }),
+            Some(end),
+        ) = (items.last(), painted.rfind(END))
+        {
+            let cells = cells::svg(*area, *columns, levels, ENLARGED);
+            painted.insert_str(end, &cells);
+        }
     }
     let enlarged = format!("width=\"{}\" height=\"{}\"", size.0, size.1);
     let shown = format!("width=\"{width}\" height=\"{height}\"");
     Ok(painted.replacen(&enlarged, &shown, 1))
+}
+
+/// What ends a picture.
+const END: &str = "</svg>";
+
+/// A picture of some of the items, on a ground or on none.
+fn page(size: (u32, u32), items: &[Item], with_ground: bool) -> Result<String, PaintError> {
+    let mut painted = String::new();
+    {
+        let page = SVGBackend::with_string(&mut painted, size).into_drawing_area();
+        if with_ground {
+            page.fill(&colour(Ink::Paper))
+                .map_err(PaintError::because)?;
+        }
+        for item in items {
+            paint(&page, item).map_err(PaintError::because)?;
+        }
+        page.present().map_err(PaintError::because)?;
+    }
+    Ok(painted)
 }
 
 type Page<'a> = DrawingArea<SVGBackend<'a>, plotters::coord::Shift>;
@@ -80,6 +123,12 @@ fn paint(page: &Page<'_>, item: &Item) -> Painted {
                     style,
                 )),
             }
+        }
+        // Painted apart.
+        Item::Cells { .. } => Ok(()),
+        Item::Wash { points, ink } => {
+            let points: Vec<(i32, i32)> = points.iter().copied().map(point).collect();
+            page.draw(&Polygon::new(points, colour(*ink).mix(WASH)))
         }
         Item::Area { points, ink } => {
             let points: Vec<(i32, i32)> = points.iter().copied().map(point).collect();

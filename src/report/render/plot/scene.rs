@@ -86,6 +86,8 @@ pub enum Ink {
     Dotted,
     /// The dash-dotted curve.
     DashDotted,
+    /// Areas that measure something, such as bars.
+    Bar,
     /// What is wrong.
     Alarm,
 }
@@ -100,6 +102,9 @@ pub enum Anchor {
     /// The last letter.
     End,
 }
+
+/// How many colours the ramp of a map has.
+pub const LEVELS: u8 = 64;
 
 /// Something painted.
 #[derive(Clone, Debug, PartialEq)]
@@ -121,6 +126,23 @@ pub enum Item {
         points: Vec<[f64; 2]>,
         /// Its ink.
         ink: Ink,
+    },
+    /// A filled polygon through which the ground is seen.
+    Wash {
+        /// Its corners.
+        points: Vec<[f64; 2]>,
+        /// Its ink.
+        ink: Ink,
+    },
+    /// A grid of cells, each with a level of the colour ramp.
+    Cells {
+        /// Where the middles of the outermost cells stand; their outer halves are cut off.
+        area: Rect,
+        /// How many stand side by side.
+        columns: usize,
+        /// Levels row by row from the lowest row up, each less than [`LEVELS`]; cells without
+        /// one are hatched.
+        levels: Vec<Option<u8>>,
     },
     /// A round mark.
     Dot {

@@ -1,0 +1,378 @@
+//! What is written within a frame: at ranges, lines, marks, points and curves, each where it
+//! hides nothing; what finds no room is said beneath the picture.
+
+use super::areas::{corners, stretch};
+use super::frame::Placed;
+use super::lines::{is_within, label_ink, visible};
+use crate::report::chart::{Across, Contour, Layer, Meaning, Reference};
+use crate::report::figure::Stroke;
+use crate::report::render::plot::curves::DOT;
+use crate::report::render::plot::names::{name_curve, name_mark};
+use crate::report::render::plot::page::SMALL;
+use crate::report::render::plot::place::{Candidate, Occupied};
+use crate::report::render::plot::scene::{Anchor, Ink, Rect, Scene};
+use crate::report::render::plot::text;
+
+/// Samples of a curve stand this close where its name is placed.
+const CLOSE: f64 = 3.0;
+
+/// What could not be written where it belongs.
+#[derive(Default)]
+pub(super) struct Unnamed {
+    marks: usize,
+    sticks: usize,
+    notes: Vec<String>,
+}
+
+impl Unnamed {
+    /// Says something beneath the picture, once.
+    pub(super) fn note(&mut self, note: String) {
+        if !self.notes.contains(&note) {
+            self.notes.push(note);
+        }
+    }
+
+    /// Lines beneath the picture.
+    pub(super) fn notes(self) -> Vec<String> {
+        let mut notes = self.notes;
+        for (count, what) in [(self.marks, "mark"), (self.sticks, "line of the spectrum")] {
+            match count {
+                0 => {}
+                1 => notes.push(format!("one {what} has no label, for want of room")),
+                n => {
+                    let what = match what {
+                        "mark" => "marks",
+                        _ => "lines of the spectrum",
+                    };
+                    notes.push(format!("{n} {what} have no label, for want of room"));
+                }
+            }
+        }
+        notes
+    }
+}
+
+/// Writes what finds room, the most important first.
+pub(super) fn write(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    placed: &Placed<'_>,
+    contours: &[(&Contour, Vec<Vec<[f64; 2]>>)],
+    unnamed: &mut Unnamed,
+) {
+    for (contour, lines) in contours {
+        name_contour(scene, occupied, placed, contour, lines, unnamed);
+    }
+    for layer in &placed.panel.layers {
+        match layer {
+            Layer::Reference(line) if line.across == Across::Y => {
+                level(scene, occupied, placed, line, unnamed);
+            }
+            Layer::Band(band) if !band.label.is_empty() => {
+                let line = band.stroke.name();
+                unnamed.note(format!("shaded, around the {line} line: {}", band.label));
+            }
+            _ => {}
+        }
+    }
+    range_labels(scene, occupied, placed, unnamed);
+    marks(scene, occupied, placed, unnamed);
+    curves(scene, occupied, placed, unnamed);
+    sticks(scene, occupied, placed, unnamed);
+    points(scene, occupied, placed, unnamed);
+}
+
+fn boxed([x, y]: [f64; 2], content: &str) -> Rect {
+    text::place([x, y], Anchor::Middle, false, SMALL, content)
+}
+
+fn candidate(area: Rect) -> Candidate {
+    Candidate { area, leader: None }
+}
+
+/// Writes a text at a place that was taken, on a ground of its own where it needs one.
+fn put(scene: &mut Scene, area: Rect, ink: Ink, content: &str, with_ground: bool) {
+    if with_ground {
+        scene.area(&corners(area.grown(1.5)), Ink::Paper);
+    }
+    let at = [area.left, 0.5 * (area.top + area.bottom)];
+    scene.text(at, Anchor::Start, SMALL, ink, content);
+}
+
+/// The label of a level line: at its right end, on the side that is allowed.
+fn level(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    placed: &Placed<'_>,
+    line: &Reference,
+    unnamed: &mut Unnamed,
+) {
+    let area = placed.area;
+    let y = placed.y(line.at);
+    if line.label.is_empty() || !is_within(area, [area.left, y]) {
+        return;
+    }
+    let label = text::shortened(&line.label, SMALL, 0.6 * (area.right - area.left));
+    let half = 0.5 * text::length(&label, SMALL);
+    let sides = match line.meaning {
+        Meaning::AtMost => [10.0, -16.0],
+        Meaning::AtLeast => [-10.0, 16.0],
+        Meaning::Nominal | Meaning::Guide => [-10.0, 10.0],
+    };
+    let width = area.right - area.left - 12.0 - 2.0 * half;
+    let candidates = sides.into_iter().flat_map(|side| {
+        (0..=12)
+            .map(move |step| area.right - 6.0 - half - width * f64::from(step) / 12.0)
+            .map(move |x| [x, y + side])
+    });
+    let candidates = candidates.map(|at| candidate(boxed(at, &label)));
+    match occupied.take(area.grown(-1.0), candidates.collect::<Vec<_>>()) {
+        Some(chosen) => put(
+            scene,
+            chosen.area,
+            label_ink(line.meaning),
+            &label,
+            placed.has_map(),
+        ),
+        None => unnamed.note(format!("a level line without its label: {}", line.label)),
+    }
+}
+
+fn range_labels(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    placed: &Placed<'_>,
+    unnamed: &mut Unnamed,
+) {
+    let mut named: Vec<&str> = Vec::new();
+    let mut without: Vec<&str> = Vec::new();
+    for layer in &placed.panel.layers {
+        let Layer::Range(range) = layer else { continue };
+        let Some(area) = stretch(placed, range.from, range.to) else {
+            continue;
+        };
+        if range.label.is_empty() {
+            continue;
+        }
+        let middle = 0.5 * (area.left + area.right);
+        let half = 0.5 * text::length(&range.label, SMALL);
+        let room = (0.5 * (area.right - area.left) - half - 4.0).max(0.0);
+        let heights = [area.top + 10.0, area.bottom - 10.0, area.top + 26.0];
+        let candidates: Vec<Candidate> = heights
+            .into_iter()
+            .flat_map(|y| [0.0, 1.0, -1.0, 0.5, -0.5].map(|aside| [middle + aside * room, y]))
+            .map(|at| candidate(boxed(at, &range.label)))
+            .collect();
+        match occupied.take_clear(area.grown(-2.0), candidates) {
+            Some(chosen) => {
+                put(
+                    scene,
+                    chosen.area,
+                    Ink::Grey,
+                    &range.label,
+                    placed.has_map(),
+                );
+                named.push(&range.label);
+            }
+            None => without.push(&range.label),
+        }
+    }
+    for label in without {
+        if !named.contains(&label) {
+            unnamed.note(format!("tinted: {label}"));
+        }
+    }
+}
+
+fn marks(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnamed: &mut Unnamed) {
+    for layer in &placed.panel.layers {
+        let Layer::Mark(mark) = layer else { continue };
+        let points = mark.places.iter().map(|(_, at)| placed.point(*at));
+        let lowest = points
+            .filter(|at| is_within(placed.area, *at))
+            .reduce(|a, b| [0.5 * (a[0] + b[0]), a[1].max(b[1])]);
+        let (Some(at), false) = (lowest, mark.label.is_empty()) else {
+            continue;
+        };
+        let with_ground = placed.has_map();
+        if !name_mark(scene, occupied, placed.area, at, &mark.label, with_ground) {
+            unnamed.marks += 1;
+        }
+    }
+}
+
+/// The same line with points so close that any place of it is near one.
+fn dense(points: &[[f64; 2]]) -> Vec<[f64; 2]> {
+    let mut all: Vec<[f64; 2]> = points.first().copied().into_iter().collect();
+    for pair in points.windows(2) {
+        let [a, b] = [pair[0], pair[1]];
+        let pieces = ((b[0] - a[0]).hypot(b[1] - a[1]) / CLOSE).ceil().max(1.0) as usize;
+        all.extend((1..=pieces).map(|piece| {
+            let share = piece as f64 / pieces as f64;
+            [a[0] + share * (b[0] - a[0]), a[1] + share * (b[1] - a[1])]
+        }));
+    }
+    all
+}
+
+fn curves(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnamed: &mut Unnamed) {
+    let mut named: Vec<(&str, Stroke)> = Vec::new();
+    for layer in &placed.panel.layers {
+        let Layer::Curve(curve) = layer else { continue };
+        let name = (curve.label.as_str(), curve.stroke);
+        if curve.label.is_empty() || named.contains(&name) {
+            continue;
+        }
+        let mut pieces = visible(placed, curve);
+        if pieces.is_empty() {
+            if curve.pieces.iter().any(|piece| !piece.is_empty()) {
+                unnamed.note(format!("outside the picture: {}", curve.label));
+            }
+            continue;
+        }
+        // The widest piece first.
+        let width = |piece: &Vec<[f64; 2]>| (piece[piece.len() - 1][0] - piece[0][0]).abs();
+        pieces.sort_by(|a, b| width(b).total_cmp(&width(a)));
+        let with_ground = placed.has_map();
+        let found = pieces.iter().any(|piece| {
+            let points = dense(piece);
+            name_curve(scene, occupied, placed.area, &points, name, with_ground)
+        });
+        if found {
+            named.push(name);
+        } else {
+            unnamed.note(format!("{} line: {}", curve.stroke.name(), curve.label));
+        }
+    }
+}
+
+fn sticks(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnamed: &mut Unnamed) {
+    let mut all: Vec<([f64; 2], &str)> = placed
+        .panel
+        .layers
+        .iter()
+        .flat_map(|layer| match layer {
+            Layer::Sticks(sticks) => sticks.as_slice(),
+            _ => &[],
+        })
+        .filter(|stick| !stick.label.is_empty())
+        .map(|stick| (placed.point([stick.at, stick.height]), stick.label.as_str()))
+        .filter(|(at, _)| is_within(placed.area, *at))
+        .collect();
+    // The highest first: it is the one that is looked for.
+    all.sort_by(|a, b| a.0[1].total_cmp(&b.0[1]));
+    for ([x, y], label) in all {
+        let (length, half) = (text::length(label, SMALL), 0.5 * text::height(SMALL));
+        let over = y - DOT - 2.0 - half;
+        let flat = [
+            [x, over],
+            [x + DOT + 3.0 + 0.5 * length, y],
+            [x - DOT - 3.0 - 0.5 * length, y],
+            [x + 0.5 * length, over],
+            [x - 0.5 * length, over],
+        ];
+        let foot = y - DOT - 3.0;
+        let upright = Rect {
+            left: x - half,
+            right: x + half,
+            top: foot - length,
+            bottom: foot,
+        };
+        let mut candidates: Vec<Candidate> = flat.map(|at| candidate(boxed(at, label))).to_vec();
+        candidates.push(candidate(upright));
+        match occupied.take_clear(placed.area.grown(-1.0), candidates) {
+            Some(chosen) if chosen.area == upright => {
+                scene.upright_text([x, foot], Anchor::Start, SMALL, Ink::Black, label);
+            }
+            Some(chosen) => put(scene, chosen.area, Ink::Black, label, false),
+            None => unnamed.sticks += 1,
+        }
+    }
+}
+
+fn points(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnamed: &mut Unnamed) {
+    for layer in &placed.panel.layers {
+        let Layer::Points(points) = layer else {
+            continue;
+        };
+        if points.label.is_empty() {
+            continue;
+        }
+        let aside = DOT + 5.0 + 0.5 * text::length(&points.label, SMALL);
+        let candidates: Vec<Candidate> = points
+            .points
+            .iter()
+            .map(|point| placed.point([point.x, point.y]))
+            .filter(|at| is_within(placed.area, *at))
+            .flat_map(|[x, y]| {
+                [
+                    [x + aside, y],
+                    [x - aside, y],
+                    [x, y - 14.0],
+                    [x, y + 14.0],
+                    [x + aside, y - 12.0],
+                    [x - aside, y - 12.0],
+                    [x + aside, y + 12.0],
+                    [x - aside, y + 12.0],
+                ]
+            })
+            .map(|at| candidate(boxed(at, &points.label)))
+            .collect();
+        match occupied.take_clear(placed.area.grown(-2.0), candidates) {
+            Some(chosen) => put(
+                scene,
+                chosen.area,
+                Ink::Black,
+                &points.label,
+                placed.has_map(),
+            ),
+            None => {
+                let shape = match points.stroke {
+                    Stroke::Solid => "discs",
+                    Stroke::Dashed => "rings",
+                    Stroke::Dotted => "filled diamonds",
+                    Stroke::DashDotted => "open diamonds",
+                };
+                unnamed.note(format!("{shape}: {}", points.label));
+            }
+        }
+    }
+}
+
+/// The label of a line of one value lies on the line itself.
+fn name_contour(
+    scene: &mut Scene,
+    occupied: &mut Occupied,
+    placed: &Placed<'_>,
+    contour: &Contour,
+    lines: &[Vec<[f64; 2]>],
+    unnamed: &mut Unnamed,
+) {
+    const PLACES: usize = 16;
+    if contour.label.is_empty() {
+        return;
+    }
+    let Some(longest) = lines.iter().max_by_key(|line| line.len()) else {
+        unnamed.note(format!("nowhere in the picture: {}", contour.label));
+        return;
+    };
+    let points = dense(longest);
+    // From the middle outwards.
+    let mut places: Vec<usize> = (1..PLACES).collect();
+    places.sort_by_key(|place| place.abs_diff(PLACES / 2));
+    let candidates: Vec<Candidate> = places
+        .into_iter()
+        .map(|place| points[place * (points.len() - 1) / PLACES])
+        .map(|at| candidate(boxed(at, &contour.label)))
+        .collect();
+    match occupied.take(placed.area.grown(-2.0), candidates) {
+        Some(chosen) => {
+            let ink = label_ink(contour.meaning);
+            put(scene, chosen.area, ink, &contour.label, true);
+        }
+        None => unnamed.note(format!(
+            "a line of one value without its label: {}",
+            contour.label
+        )),
+    }
+}

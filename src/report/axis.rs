@@ -5,6 +5,8 @@ use super::number::{NUMBERS, PLAIN, Scale, plain};
 
 /// Room beyond the outermost values, as a share of the range.
 const ROOM: f64 = 0.06;
+/// The same beyond the ends of bars, where something is written.
+const BEYOND_BARS: f64 = 0.18;
 /// A number without a unit is read well down to this size; smaller ones get a power of ten.
 const PLAIN_DOWN_TO: f64 = 2e-3;
 /// A range this small beside its values is counted from a round number within it.
@@ -101,6 +103,19 @@ impl Axis {
             usual(scales).size
         };
         Axis::between(title, 0.0, to, scales)
+    }
+
+    /// An even axis over zero and all the finite values, with room beyond them for what is written
+    /// at the ends of bars.
+    pub fn for_bars(title: &str, values: impl IntoIterator<Item = f64>, scales: &[Scale]) -> Axis {
+        let [least, most] = extremes(values).unwrap_or([0.0; 2]);
+        let [least, most] = [least.min(0.0), most.max(0.0)];
+        if least == most {
+            return Axis::between(title, 0.0, usual(scales).size, scales);
+        }
+        let room = BEYOND_BARS * (most - least);
+        let beyond = |end: f64| if end == 0.0 { 0.0 } else { room };
+        Axis::between(title, least - beyond(least), most + beyond(most), scales)
     }
 
     /// An even axis from exactly here to there, for what was varied on purpose.

@@ -411,7 +411,7 @@ fn bars() -> Chart {
             },
             Panel {
                 heading: "First derivatives".into(),
-                x: Axis::of("change of the waist", [3e-4, -4.5e-4], &LENGTHS),
+                x: Axis::for_bars("change of the waist", [3e-4, -4.5e-4], &LENGTHS),
                 y: None,
                 layers: vec![Layer::Bars(signed.collect())],
             },

@@ -55,6 +55,7 @@ pub(super) fn scene(figure: &Figure) -> Scene {
         verdict: &figure.verdict,
         particulars: &figure.particulars,
         missing: &figure.missing,
+        in_two_lines: false,
     };
     let mut top = heading.draw(&mut scene);
     let mut panels = placed(figure, width);

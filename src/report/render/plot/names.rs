@@ -8,10 +8,12 @@ use super::scene::{Anchor, Ink, Rect, Scene};
 use super::text;
 use crate::report::figure::{Curve, Stroke};
 
-const LABEL: f64 = 12.5;
+pub(super) const LABEL: f64 = 12.5;
 const WAIST: f64 = 11.0;
+/// How near another line makes it doubtful whose name it is.
+const NEAR: f64 = 12.0;
 /// Length of the piece of line before a curve's name.
-const SAMPLE: f64 = 30.0;
+pub(super) const SAMPLE: f64 = 30.0;
 /// Heights at which a waist's radius may stand, from near to far.
 const STEPS: [f64; 11] = [
     13.0, 20.0, 28.0, 40.0, 54.0, 70.0, 88.0, 108.0, 130.0, 160.0, 200.0,
@@ -56,9 +58,9 @@ fn write_marks(scene: &mut Scene, occupied: &mut Occupied, panels: &[Placed<'_>]
         for mark in &placed.panel.marks {
             let points = mark.places.iter().map(|(_, at)| placed.point(*at));
             let lowest = points.reduce(|a, b| [0.5 * (a[0] + b[0]), a[1].max(b[1])]);
-            if !lowest
-                .is_some_and(|at| name_mark(scene, occupied, placed.area, at, &mark.label, false))
-            {
+            if !lowest.is_some_and(|at| {
+                name_mark(scene, occupied, placed.area, at, &mark.label, Ground::Never)
+            }) {
                 unnamed += 1;
             }
         }
@@ -90,7 +92,14 @@ fn write_curves<'a>(
                 .flat_map(|curve| curve.points.iter().map(|point| placed.point(*point)))
                 .collect();
             let name = (curve.label.as_str(), curve.stroke);
-            if name_curve(scene, occupied, placed.area, &points, name, false) {
+            if name_curve(
+                scene,
+                occupied,
+                placed.area,
+                (&points, &[]),
+                name,
+                Ground::Never,
+            ) {
                 named.push(&curve.label);
                 unnamed.retain(|other| other.label != curve.label);
             } else if !unnamed.iter().any(|other| other.label == curve.label) {
@@ -108,7 +117,7 @@ pub(super) fn name_mark(
     within: Rect,
     [x, y]: [f64; 2],
     label: &str,
-    with_ground: bool,
+    ground: Ground,
 ) -> bool {
     let length = text::length(label, WAIST);
     let half = 0.5 * text::height(WAIST);
@@ -137,25 +146,28 @@ pub(super) fn name_mark(
     if let Some(leader) = chosen.leader {
         scene.line(&leader, Ink::Grey, 0.7);
     }
-    if with_ground {
-        ground(scene, chosen.area);
-    }
+    ground.lay(scene, occupied, chosen.area);
     let middle = 0.5 * (chosen.area.top + chosen.area.bottom);
-    let at = [chosen.area.left, middle];
-    scene.text(at, Anchor::Start, WAIST, Ink::Black, label);
+    let (at, anchor) = if ground == Ground::Never {
+        (chosen.area.left, Anchor::Start)
+    } else {
+        (0.5 * (chosen.area.left + chosen.area.right), Anchor::Middle)
+    };
+    scene.text([at, middle], anchor, WAIST, Ink::Black, label);
     true
 }
 
 /// Writes a curve's name over, under or beside it, with a piece of its line.
 ///
-/// The points run from left to right, closely.
+/// The points run from left to right, closely. A place that is as near to another line is only
+/// the second choice.
 pub(super) fn name_curve(
     scene: &mut Scene,
     occupied: &mut Occupied,
     within: Rect,
-    points: &[[f64; 2]],
+    (points, others): (&[[f64; 2]], &[Vec<[f64; 2]>]),
     (label, style): (&str, Stroke),
-    with_ground: bool,
+    ground: Ground,
 ) -> bool {
     const PLACES: i32 = 40;
     const STEEP: f64 = 60.0;
@@ -202,13 +214,25 @@ pub(super) fn name_curve(
             Some(at(x + side * (0.5 * length + 10.0), height(x)?))
         }));
     }
-    let Some(chosen) = occupied.take_clear(within.grown(-2.0), candidates) else {
+    let is_plain = |area: Rect| {
+        let area = area.grown(NEAR);
+        let mut pieces = others.iter().flat_map(|line| line.windows(2));
+        !pieces.any(|pair| area.meets(pair[0], pair[1]))
+    };
+    let plain: Vec<Candidate> = candidates
+        .iter()
+        .copied()
+        .filter(|candidate| is_plain(candidate.area))
+        .collect();
+    let within = within.grown(-2.0);
+    let Some(chosen) = occupied
+        .take_clear(within, plain)
+        .or_else(|| occupied.take_clear(within, candidates))
+    else {
         return false;
     };
     let area = chosen.area;
-    if with_ground {
-        ground(scene, area);
-    }
+    ground.lay(scene, occupied, area);
     let y = 0.5 * (area.top + area.bottom);
     let sample = [[area.left, y], [area.left + SAMPLE, y]];
     stroke(scene, &sample, style, LINE);
@@ -217,14 +241,35 @@ pub(super) fn name_curve(
     true
 }
 
-/// Paper behind a label over a map.
-fn ground(scene: &mut Scene, area: Rect) {
-    let area = area.grown(1.5);
-    let corners = [
-        [area.left, area.bottom],
-        [area.right, area.bottom],
-        [area.right, area.top],
-        [area.left, area.top],
-    ];
-    scene.area(&corners, Ink::Paper);
+/// When a label has paper behind it.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Ground {
+    /// Where curves may be seen through it.
+    Never,
+    /// Where it would lie over a curve.
+    OverCurves,
+    /// Over a map.
+    Always,
+}
+
+impl Ground {
+    /// Lays the paper where it is needed.
+    pub(super) fn lay(self, scene: &mut Scene, occupied: &Occupied, area: Rect) {
+        let is_needed = match self {
+            Ground::Never => false,
+            Ground::OverCurves => occupied.hides(area),
+            Ground::Always => true,
+        };
+        if !is_needed {
+            return;
+        }
+        let area = area.grown(1.5);
+        let corners = [
+            [area.left, area.bottom],
+            [area.right, area.bottom],
+            [area.right, area.top],
+            [area.left, area.top],
+        ];
+        scene.area(&corners, Ink::Paper);
+    }
 }

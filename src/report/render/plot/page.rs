@@ -18,6 +18,8 @@ pub(super) struct Heading<'a> {
     pub verdict: &'a str,
     pub particulars: &'a str,
     pub missing: &'a [String],
+    /// Whether the verdict may have a line of its own, where the title is too long for both.
+    pub in_two_lines: bool,
 }
 
 impl Heading<'_> {
@@ -26,10 +28,20 @@ impl Heading<'_> {
         let room = scene.width - 2.0 * SIDE;
         let verdict = format!(" — {}", self.verdict);
         let name_room = room - text::length(&verdict, TITLE);
-        let title = text::shortened(self.title, TITLE, name_room) + &verdict;
-        let mut y = TOP + 0.5 * text::height(TITLE);
-        scene.text([SIDE, y], Anchor::Start, TITLE, Ink::Black, &title);
-        y += 0.5 * text::height(TITLE) + 4.0;
+        let is_too_long = text::length(self.title, TITLE) > name_room;
+        let lines = if self.in_two_lines && is_too_long {
+            let title = text::shortened(&format!("{} —", self.title), TITLE, room);
+            vec![title, self.verdict.to_string()]
+        } else {
+            vec![text::shortened(self.title, TITLE, name_room) + &verdict]
+        };
+        let mut y = TOP;
+        for line in lines {
+            y += 0.5 * text::height(TITLE);
+            scene.text([SIDE, y], Anchor::Start, TITLE, Ink::Black, &line);
+            y += 0.5 * text::height(TITLE);
+        }
+        y += 4.0;
         let mut line = |content: &str, ink| {
             for content in text::wrapped(content, SMALL, room) {
                 y += 0.5 * text::height(SMALL);

@@ -41,6 +41,11 @@ impl Occupied {
                 .is_none_or(|[a, b]| !self.boxes.iter().any(|other| other.meets(a, b)))
     }
 
+    /// Whether a label hides a piece of a curve.
+    pub(super) fn hides(&self, area: Rect) -> bool {
+        self.covered(area) > 0
+    }
+
     /// How many pieces of curves a label would cover.
     fn covered(&self, area: Rect) -> usize {
         let area = area.grown(2.0);

@@ -20,7 +20,13 @@ pub(super) fn ticks(axis: &Axis, about: f64) -> Vec<Tick> {
     match axis.ticks {
         Ticks::Even(unit) => even(axis, unit, about),
         Ticks::Decades(units) => decades(axis, |value| with_unit(value, units), about),
-        Ticks::Powers(unit) => decades(axis, |value| power(value / unit.size), about),
+        Ticks::Powers(unit) => {
+            let is_plain = [axis.from, axis.to]
+                .map(|end| (end / unit.size).log10())
+                .iter()
+                .all(|exponent| (-4.0..=5.0).contains(exponent));
+            decades(axis, |value| power(value / unit.size, is_plain), about)
+        }
     }
 }
 
@@ -93,10 +99,10 @@ fn with_unit(value: f64, units: &[Scale]) -> String {
     })
 }
 
-/// A round number, as a power of ten where it would have many zeros.
-fn power(value: f64) -> String {
+/// A round number, as a power of ten where it or others beside it would have many zeros.
+fn power(value: f64, is_plain: bool) -> String {
     let exponent = (value.log10() + 1e-9).floor();
-    if (-3.0..=4.0).contains(&exponent) {
+    if is_plain || (-1.0..=2.0).contains(&exponent) {
         return plain(value, 2);
     }
     let digit = plain(value / 10_f64.powf(exponent), 2);
@@ -138,6 +144,18 @@ mod tests {
         assert_eq!(found, ["0", "50", "100", "150", "200", "250"]);
         let found = texts(0.0, 1.1e-3, Ticks::Even(millimetres));
         assert_eq!(found, ["0.0", "0.2", "0.4", "0.6", "0.8", "1.0"]);
+    }
+
+    #[test]
+    fn powers_of_ten_where_there_would_be_many_zeros() {
+        use crate::report::number::PLAIN;
+        let found = texts(5e-3, 200.0, Ticks::Powers(PLAIN));
+        assert_eq!(found, ["0.01", "0.1", "1", "10", "100"]);
+        let found = texts(5e-7, 20.0, Ticks::Powers(PLAIN));
+        assert_eq!(
+            found,
+            ["10⁻⁶", "10⁻⁵", "10⁻⁴", "10⁻³", "10⁻²", "0.1", "1", "10"]
+        );
     }
 
     #[test]

@@ -22,7 +22,7 @@ pub(super) fn corners(area: Rect) -> [[f64; 2]; 4] {
 }
 
 /// The tinted stretches, beneath everything.
-pub(super) fn ranges(scene: &mut Scene, placed: &Placed<'_>) {
+pub(super) fn ranges(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>) {
     for layer in &placed.panel.layers {
         let Layer::Range(range) = layer else { continue };
         let Some(area) = stretch(placed, range.from, range.to) else {
@@ -32,7 +32,9 @@ pub(super) fn ranges(scene: &mut Scene, placed: &Placed<'_>) {
         // An edge that is the frame's own is no end of the range.
         for x in [area.left, area.right] {
             if placed.area.left < x && x < placed.area.right {
-                scene.line(&[[x, area.top], [x, area.bottom]], Ink::Grey, 0.8);
+                let edge = [[x, area.top], [x, area.bottom]];
+                scene.line(&edge, Ink::Grey, 0.8);
+                occupied.add_curve(edge.to_vec());
             }
         }
     }

@@ -39,12 +39,24 @@ pub(super) fn names_width(panel: &Panel, width: f64) -> f64 {
     longest.min(NAMES * width)
 }
 
-/// Draws the bars, their names and what is written at their ends.
-pub(super) fn draw(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>) {
+/// The middle of a row.
+fn middle(placed: &Placed<'_>, index: usize) -> f64 {
+    placed.area.top + AROUND + ROW * (index as f64 + 0.5)
+}
+
+/// Writes what stands at the ends of the bars.
+pub(super) fn write(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>) {
+    for (index, bar) in all(placed.panel).enumerate() {
+        write_end(scene, occupied, placed, bar, middle(placed, index));
+    }
+}
+
+/// Draws the bars and their names.
+pub(super) fn draw(scene: &mut Scene, placed: &Placed<'_>) {
     let area = placed.area;
     let names = area.left - placed.start - 7.0;
     for (index, bar) in all(placed.panel).enumerate() {
-        let y = area.top + AROUND + ROW * (index as f64 + 0.5);
+        let y = middle(placed, index);
         let name = text::shortened(&bar.name, NUMBER, names);
         scene.text([area.left - 7.0, y], Anchor::End, NUMBER, Ink::Black, &name);
         let values = [Some(bar.value), bar.total].into_iter().flatten();
@@ -79,7 +91,6 @@ pub(super) fn draw(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'
                 }
             }
         }
-        write(scene, occupied, placed, bar, y);
     }
 }
 
@@ -94,7 +105,7 @@ fn reach(placed: &Placed<'_>, [from, to]: [f64; 2], y: f64, half: f64) -> Rect {
 }
 
 /// What is written at the end of a bar: beyond it, else on its other side, else over it.
-fn write(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, bar: &Bar, y: f64) {
+fn write_end(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, bar: &Bar, y: f64) {
     if bar.label.is_empty() {
         return;
     }
@@ -125,7 +136,8 @@ fn write(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, bar: &
     });
     if let Some(chosen) = occupied.take(area.grown(-2.0), candidates) {
         let at = [chosen.area.left, y];
-        if chosen.area.left < right && left < chosen.area.right {
+        let is_over_bar = chosen.area.left < right && left < chosen.area.right;
+        if is_over_bar || occupied.hides(chosen.area) {
             scene.area(&corners(chosen.area.grown(1.0)), Ink::Paper);
         }
         scene.text(at, Anchor::Start, SMALL, Ink::Black, &bar.label);

@@ -26,6 +26,8 @@ pub(super) struct Placed<'a> {
     pub height: f64,
     /// Where the panel begins, the numbers at its left included.
     pub start: f64,
+    /// What the row has over its frames.
+    pub head_room: f64,
     /// Whether the numbers of the horizontal axis stand at the panel below.
     pub is_read_below: bool,
     pub tags: Tags,
@@ -173,7 +175,7 @@ fn x_ticks(placed: &Placed<'_>) -> Vec<Tick> {
     const APART: f64 = 10.0;
     let axis = &placed.panel.x;
     let width = placed.area.right - placed.area.left;
-    let mut about = (width / 70.0).clamp(2.0, 10.0).floor();
+    let mut about = (width / 60.0).clamp(2.0, 10.0).floor();
     loop {
         let found = ticks::ticks(axis, about);
         let fit = found.windows(2).all(|pair| {
@@ -199,7 +201,8 @@ pub(super) fn draw(scene: &mut Scene, placed: &Placed<'_>) {
     ];
     scene.line(&outline, Ink::Grey, 1.0);
     if !placed.panel.heading.is_empty() {
-        let y = area.top - placed.tags.height - HEADING_GAP - 0.5 * text::height(CAPTION);
+        // Headings of one row stand at one height.
+        let y = area.top - placed.head_room + 0.5 * text::height(CAPTION);
         let room = area.right - area.left;
         let heading = text::shortened(&placed.panel.heading, CAPTION, room);
         scene.text([area.left, y], Anchor::Start, CAPTION, Ink::Black, &heading);

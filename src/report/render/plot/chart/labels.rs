@@ -1,13 +1,14 @@
 //! What is written within a frame: at ranges, lines, marks, points and curves, each where it
 //! hides nothing; what finds no room is said beneath the picture.
 
-use super::areas::{corners, stretch};
+use super::areas::stretch;
 use super::frame::Placed;
-use super::lines::{is_within, label_ink, visible};
-use crate::report::chart::{Across, Contour, Layer, Meaning, Reference};
+use super::lines::{is_within, label_ink, shape, visible};
+use super::{afar, sticks};
+use crate::report::chart::{Across, Band, Contour, Layer, Meaning, Reference};
 use crate::report::figure::Stroke;
 use crate::report::render::plot::curves::DOT;
-use crate::report::render::plot::names::{name_curve, name_mark};
+use crate::report::render::plot::names::{Ground, name_curve, name_mark};
 use crate::report::render::plot::page::SMALL;
 use crate::report::render::plot::place::{Candidate, Occupied};
 use crate::report::render::plot::scene::{Anchor, Ink, Rect, Scene};
@@ -21,6 +22,7 @@ const CLOSE: f64 = 3.0;
 pub(super) struct Unnamed {
     marks: usize,
     sticks: usize,
+    lines: Vec<String>,
     notes: Vec<String>,
 }
 
@@ -32,20 +34,41 @@ impl Unnamed {
         }
     }
 
+    /// A straight line has no label.
+    pub(super) fn line(&mut self, label: &str) {
+        if !self.lines.iter().any(|line| line == label) {
+            self.lines.push(label.into());
+        }
+    }
+
     /// Lines beneath the picture.
     pub(super) fn notes(self) -> Vec<String> {
+        const FEW: usize = 5;
         let mut notes = self.notes;
-        for (count, what) in [(self.marks, "mark"), (self.sticks, "line of the spectrum")] {
+        if !self.lines.is_empty() {
+            let few = &self.lines[..self.lines.len().min(FEW)];
+            let more = match self.lines.len() - few.len() {
+                0 => String::new(),
+                more => format!(" and {more} more"),
+            };
+            let few = few.join(", ");
+            notes.push(format!(
+                "drawn without a label, for want of room: {few}{more}"
+            ));
+        }
+        let counts = [
+            (self.marks, "mark has", "marks have"),
+            (
+                self.sticks,
+                "line of the spectrum has",
+                "lines of the spectrum have",
+            ),
+        ];
+        for (count, one, many) in counts {
             match count {
                 0 => {}
-                1 => notes.push(format!("one {what} has no label, for want of room")),
-                n => {
-                    let what = match what {
-                        "mark" => "marks",
-                        _ => "lines of the spectrum",
-                    };
-                    notes.push(format!("{n} {what} have no label, for want of room"));
-                }
+                1 => notes.push(format!("one {one} no label, for want of room")),
+                n => notes.push(format!("{n} {many} no label, for want of room")),
             }
         }
         notes
@@ -68,17 +91,14 @@ pub(super) fn write(
             Layer::Reference(line) if line.across == Across::Y => {
                 level(scene, occupied, placed, line, unnamed);
             }
-            Layer::Band(band) if !band.label.is_empty() => {
-                let line = band.stroke.name();
-                unnamed.note(format!("shaded, around the {line} line: {}", band.label));
-            }
             _ => {}
         }
     }
+    bands(placed, unnamed);
     range_labels(scene, occupied, placed, unnamed);
     marks(scene, occupied, placed, unnamed);
     curves(scene, occupied, placed, unnamed);
-    sticks(scene, occupied, placed, unnamed);
+    unnamed.sticks += sticks::name(scene, occupied, placed);
     points(scene, occupied, placed, unnamed);
 }
 
@@ -90,13 +110,40 @@ fn candidate(area: Rect) -> Candidate {
     Candidate { area, leader: None }
 }
 
-/// Writes a text at a place that was taken, on a ground of its own where it needs one.
-fn put(scene: &mut Scene, area: Rect, ink: Ink, content: &str, with_ground: bool) {
-    if with_ground {
-        scene.area(&corners(area.grown(1.5)), Ink::Paper);
+/// Paper behind labels of a panel.
+fn ground(placed: &Placed<'_>) -> Ground {
+    if placed.has_map() {
+        Ground::Always
+    } else {
+        Ground::OverCurves
     }
-    let at = [area.left, 0.5 * (area.top + area.bottom)];
-    scene.text(at, Anchor::Start, SMALL, ink, content);
+}
+
+/// Writes a text in the middle of a place that was taken.
+fn put(scene: &mut Scene, area: Rect, ink: Ink, content: &str) {
+    let at = [
+        0.5 * (area.left + area.right),
+        0.5 * (area.top + area.bottom),
+    ];
+    scene.text(at, Anchor::Middle, SMALL, ink, content);
+}
+
+/// What bands mean: said once where all mean the same.
+fn bands(placed: &Placed<'_>, unnamed: &mut Unnamed) {
+    let bands = placed.panel.layers.iter().filter_map(|layer| match layer {
+        Layer::Band(band) if !band.label.is_empty() => Some(band),
+        _ => None,
+    });
+    let bands: Vec<&Band> = bands.collect();
+    let is_same = bands.windows(2).all(|pair| pair[0].label == pair[1].label);
+    for band in bands {
+        unnamed.note(if is_same {
+            format!("shaded: {}", band.label)
+        } else {
+            let line = band.stroke.name();
+            format!("shaded around the {line} line: {}", band.label)
+        });
+    }
 }
 
 /// The label of a level line: at its right end, on the side that is allowed.
@@ -127,14 +174,11 @@ fn level(
     });
     let candidates = candidates.map(|at| candidate(boxed(at, &label)));
     match occupied.take(area.grown(-1.0), candidates.collect::<Vec<_>>()) {
-        Some(chosen) => put(
-            scene,
-            chosen.area,
-            label_ink(line.meaning),
-            &label,
-            placed.has_map(),
-        ),
-        None => unnamed.note(format!("a level line without its label: {}", line.label)),
+        Some(chosen) => {
+            ground(placed).lay(scene, occupied, chosen.area);
+            put(scene, chosen.area, label_ink(line.meaning), &label);
+        }
+        None => unnamed.line(&line.label),
     }
 }
 
@@ -165,13 +209,8 @@ fn range_labels(
             .collect();
         match occupied.take_clear(area.grown(-2.0), candidates) {
             Some(chosen) => {
-                put(
-                    scene,
-                    chosen.area,
-                    Ink::Grey,
-                    &range.label,
-                    placed.has_map(),
-                );
+                ground(placed).lay(scene, occupied, chosen.area);
+                put(scene, chosen.area, Ink::Grey, &range.label);
                 named.push(&range.label);
             }
             None => without.push(&range.label),
@@ -194,8 +233,8 @@ fn marks(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unname
         let (Some(at), false) = (lowest, mark.label.is_empty()) else {
             continue;
         };
-        let with_ground = placed.has_map();
-        if !name_mark(scene, occupied, placed.area, at, &mark.label, with_ground) {
+        let ground = ground(placed);
+        if !name_mark(scene, occupied, placed.area, at, &mark.label, ground) {
             unnamed.marks += 1;
         }
     }
@@ -233,11 +272,22 @@ fn curves(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnam
         // The widest piece first.
         let width = |piece: &Vec<[f64; 2]>| (piece[piece.len() - 1][0] - piece[0][0]).abs();
         pieces.sort_by(|a, b| width(b).total_cmp(&width(a)));
-        let with_ground = placed.has_map();
+        let others: Vec<Vec<[f64; 2]>> = placed
+            .panel
+            .layers
+            .iter()
+            .filter_map(|layer| match layer {
+                Layer::Curve(other) if !std::ptr::eq(other, curve) => Some(other),
+                _ => None,
+            })
+            .flat_map(|other| visible(placed, other))
+            .collect();
+        let ground = ground(placed);
         let found = pieces.iter().any(|piece| {
             let points = dense(piece);
-            name_curve(scene, occupied, placed.area, &points, name, with_ground)
-        });
+            let lines = (points.as_slice(), others.as_slice());
+            name_curve(scene, occupied, placed.area, lines, name, ground)
+        }) || afar::name_curve(scene, occupied, placed.area, &pieces, &others, name);
         if found {
             named.push(name);
         } else {
@@ -246,51 +296,9 @@ fn curves(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnam
     }
 }
 
-fn sticks(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnamed: &mut Unnamed) {
-    let mut all: Vec<([f64; 2], &str)> = placed
-        .panel
-        .layers
-        .iter()
-        .flat_map(|layer| match layer {
-            Layer::Sticks(sticks) => sticks.as_slice(),
-            _ => &[],
-        })
-        .filter(|stick| !stick.label.is_empty())
-        .map(|stick| (placed.point([stick.at, stick.height]), stick.label.as_str()))
-        .filter(|(at, _)| is_within(placed.area, *at))
-        .collect();
-    // The highest first: it is the one that is looked for.
-    all.sort_by(|a, b| a.0[1].total_cmp(&b.0[1]));
-    for ([x, y], label) in all {
-        let (length, half) = (text::length(label, SMALL), 0.5 * text::height(SMALL));
-        let over = y - DOT - 2.0 - half;
-        let flat = [
-            [x, over],
-            [x + DOT + 3.0 + 0.5 * length, y],
-            [x - DOT - 3.0 - 0.5 * length, y],
-            [x + 0.5 * length, over],
-            [x - 0.5 * length, over],
-        ];
-        let foot = y - DOT - 3.0;
-        let upright = Rect {
-            left: x - half,
-            right: x + half,
-            top: foot - length,
-            bottom: foot,
-        };
-        let mut candidates: Vec<Candidate> = flat.map(|at| candidate(boxed(at, label))).to_vec();
-        candidates.push(candidate(upright));
-        match occupied.take_clear(placed.area.grown(-1.0), candidates) {
-            Some(chosen) if chosen.area == upright => {
-                scene.upright_text([x, foot], Anchor::Start, SMALL, Ink::Black, label);
-            }
-            Some(chosen) => put(scene, chosen.area, Ink::Black, label, false),
-            None => unnamed.sticks += 1,
-        }
-    }
-}
-
 fn points(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnamed: &mut Unnamed) {
+    /// Room for one of the points before what they are called.
+    const SHAPE: f64 = 14.0;
     for layer in &placed.panel.layers {
         let Layer::Points(points) = layer else {
             continue;
@@ -298,34 +306,43 @@ fn points(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnam
         if points.label.is_empty() {
             continue;
         }
-        let aside = DOT + 5.0 + 0.5 * text::length(&points.label, SMALL);
-        let candidates: Vec<Candidate> = points
+        let half = 0.5 * (SHAPE + text::length(&points.label, SMALL));
+        let aside = DOT + 8.0 + half;
+        let around = [
+            [aside, 0.0],
+            [-aside, 0.0],
+            [0.0, -16.0],
+            [0.0, 16.0],
+            [aside, -14.0],
+            [-aside, -14.0],
+            [aside, 14.0],
+            [-aside, 14.0],
+        ];
+        let height = 0.5 * text::height(SMALL);
+        let places: Vec<[f64; 2]> = points
             .points
             .iter()
             .map(|point| placed.point([point.x, point.y]))
             .filter(|at| is_within(placed.area, *at))
-            .flat_map(|[x, y]| {
-                [
-                    [x + aside, y],
-                    [x - aside, y],
-                    [x, y - 14.0],
-                    [x, y + 14.0],
-                    [x + aside, y - 12.0],
-                    [x - aside, y - 12.0],
-                    [x + aside, y + 12.0],
-                    [x - aside, y + 12.0],
-                ]
-            })
-            .map(|at| candidate(boxed(at, &points.label)))
             .collect();
+        let candidates = around.iter().flat_map(|[right, down]| {
+            places.iter().map(move |[x, y]| {
+                candidate(Rect {
+                    left: x + right - half,
+                    right: x + right + half,
+                    top: y + down - height,
+                    bottom: y + down + height,
+                })
+            })
+        });
         match occupied.take_clear(placed.area.grown(-2.0), candidates) {
-            Some(chosen) => put(
-                scene,
-                chosen.area,
-                Ink::Black,
-                &points.label,
-                placed.has_map(),
-            ),
+            Some(Candidate { area, .. }) => {
+                ground(placed).lay(scene, occupied, area);
+                let y = 0.5 * (area.top + area.bottom);
+                shape(scene, [area.left + DOT + 1.0, y], points.stroke);
+                let at = [area.left + SHAPE, y];
+                scene.text(at, Anchor::Start, SMALL, Ink::Black, &points.label);
+            }
             None => {
                 let shape = match points.stroke {
                     Stroke::Solid => "discs",
@@ -367,12 +384,14 @@ fn name_contour(
         .collect();
     match occupied.take(placed.area.grown(-2.0), candidates) {
         Some(chosen) => {
-            let ink = label_ink(contour.meaning);
-            put(scene, chosen.area, ink, &contour.label, true);
+            Ground::Always.lay(scene, occupied, chosen.area);
+            put(
+                scene,
+                chosen.area,
+                label_ink(contour.meaning),
+                &contour.label,
+            );
         }
-        None => unnamed.note(format!(
-            "a line of one value without its label: {}",
-            contour.label
-        )),
+        None => unnamed.line(&contour.label),
     }
 }

@@ -11,9 +11,9 @@ use crate::report::render::plot::place::Occupied;
 use crate::report::render::plot::scene::{Ink, Item, Rect, Scene};
 
 /// Distance, length of the little lines on the forbidden side of a limit.
-const HATCH: (f64, f64) = (9.0, 7.0);
+const HATCH: (f64, f64) = (12.0, 7.0);
 /// How much wider the paper around a line over a map is.
-const CASING: f64 = 2.4;
+const CASING: f64 = 2.0;
 /// Half the width of the ends of error bars.
 const CAP: f64 = 3.0;
 /// More sticks than this have no dots on their heads.
@@ -51,6 +51,14 @@ pub(super) fn draw(
                 for (stroke, at) in &mark.places {
                     let at = placed.point(*at);
                     if is_within(placed.area, at) {
+                        if placed.has_map() {
+                            scene.items.push(Item::Dot {
+                                at,
+                                radius: DOT + 0.8 * CASING,
+                                ink: Ink::Paper,
+                                filled: true,
+                            });
+                        }
                         curves::dot(scene, at, *stroke);
                         occupied.add_box(around(at, DOT));
                     }
@@ -149,14 +157,27 @@ pub(super) fn meant(
     meaning: Meaning,
     on_map: bool,
 ) {
+    let dashes_of_limits = (!on_map).then_some((9.0, 3.0));
     let (ink, width, dashes) = match meaning {
         Meaning::Nominal => (Ink::Black, 1.3, None),
         Meaning::Guide if on_map => (Ink::Black, 1.2, None),
         Meaning::Guide => (Ink::Grey, 1.1, Some((4.0, 3.0))),
-        Meaning::AtMost | Meaning::AtLeast => (Ink::Alarm, 1.5, Some((7.0, 3.0))),
+        Meaning::AtMost | Meaning::AtLeast => (Ink::Alarm, 1.6, dashes_of_limits),
     };
+    let hatching = match meaning {
+        Meaning::AtMost => hatching(points, 1.0),
+        Meaning::AtLeast => hatching(points, -1.0),
+        Meaning::Nominal | Meaning::Guide => Vec::new(),
+    };
+    let hatching: Vec<Vec<[f64; 2]>> = hatching
+        .iter()
+        .flat_map(|tick| clip::line(tick, area))
+        .collect();
     if on_map {
         scene.line(points, Ink::Paper, width + CASING);
+        for tick in &hatching {
+            scene.line(tick, Ink::Paper, 1.0 + CASING);
+        }
     }
     scene.items.push(Item::Line {
         points: points.to_vec(),
@@ -164,18 +185,8 @@ pub(super) fn meant(
         width,
         dashes,
     });
-    let side = match meaning {
-        Meaning::AtMost => 1.0,
-        Meaning::AtLeast => -1.0,
-        Meaning::Nominal | Meaning::Guide => return,
-    };
-    for tick in hatching(points, side) {
-        for points in clip::line(&tick, area) {
-            if on_map {
-                scene.line(&points, Ink::Paper, 1.0 + CASING);
-            }
-            scene.line(&points, ink, 1.0);
-        }
+    for tick in &hatching {
+        scene.line(tick, ink, 1.0);
     }
 }
 

@@ -133,7 +133,7 @@ fn bar(scene: &mut Scene, placed: &Placed<'_>, map: &Map) {
     let middle = [x, 0.5 * (area.top + area.bottom)];
     scene.upright_text(middle, Anchor::Middle, CAPTION, Ink::Black, &title);
     if has_absent(map) {
-        let top = area.bottom + 10.0;
+        let top = area.bottom + 24.0;
         let sample = Rect {
             left,
             right: left + SAMPLE,

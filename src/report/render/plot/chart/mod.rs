@@ -1,5 +1,6 @@
 //! From a chart to a page: its panels in rows, each with axes and layers of its own.
 
+mod afar;
 mod areas;
 mod bars;
 mod contours;
@@ -7,6 +8,7 @@ mod frame;
 mod labels;
 mod lines;
 mod map;
+mod sticks;
 mod tags;
 
 use super::page::{self, Heading, WIDTH};
@@ -33,6 +35,7 @@ pub(super) fn scene(chart: &Chart) -> Scene {
         verdict: &chart.verdict,
         particulars: &chart.particulars,
         missing: &chart.missing,
+        in_two_lines: true,
     };
     let mut top = heading.draw(&mut scene);
     let columns = chart.columns.clamp(1, 2);
@@ -44,6 +47,7 @@ pub(super) fn scene(chart: &Chart) -> Scene {
         let height = row.iter().map(|panel| panel.height).fold(0.0, f64::max);
         let foot = row.iter().map(Placed::foot).fold(0.0, f64::max);
         for panel in row {
+            panel.head_room = head;
             panel.area.top = top + head;
             panel.area.bottom = panel.area.top + panel.height;
             draw(&mut scene, panel, &mut more);
@@ -90,13 +94,15 @@ fn side_by_side(chart: &Chart, columns: usize) -> Vec<Placed<'_>> {
                 bottom: 0.0,
             };
             let below = chart.panels.get(index + columns);
+            let above = index.checked_sub(columns).map(|above| &chart.panels[above]);
             Placed {
                 panel,
                 area,
                 height: heights[index],
                 start,
                 is_read_below: below.is_some_and(|below| below.x == panel.x),
-                tags: Tags::of(panel, area),
+                head_room: 0.0,
+                tags: Tags::of(panel, above, area),
             }
         })
         .collect()
@@ -128,16 +134,17 @@ fn height(panel: &Panel, columns: usize, rows: usize) -> f64 {
 fn draw(scene: &mut Scene, placed: &Placed<'_>, unnamed: &mut labels::Unnamed) {
     scene.frames.push(placed.area);
     let mut occupied = Occupied::default();
-    areas::ranges(scene, placed);
+    areas::ranges(scene, &mut occupied, placed);
     map::cells(scene, placed);
     frame::grid(scene, placed);
     areas::draw(scene, &mut occupied, placed);
-    bars::draw(scene, &mut occupied, placed);
+    bars::draw(scene, placed);
     frame::zero(scene, placed);
     let contours = map::contours(scene, &mut occupied, placed);
     lines::draw(scene, &mut occupied, placed, unnamed);
     map::nominal(scene, &mut occupied, placed);
     frame::draw(scene, placed);
+    bars::write(scene, &mut occupied, placed);
     placed.tags.draw(scene, placed, unnamed);
     if placed.is_empty() {
         frame::nothing_to_draw(scene, placed);

@@ -11,9 +11,11 @@ use crate::report::render::plot::text;
 
 /// Space between two labels, and beside a line that passes between them.
 const APART: f64 = 10.0;
+/// How far from its end a line meets a label at the least.
+const WITHIN: f64 = 6.0;
 const PASSING: f64 = 8.0;
 /// How far a label may stand from its line before another row is begun.
-const FAR: f64 = 55.0;
+const FAR: f64 = 30.0;
 /// Height of a row, and of the lines between the frame and the lowest.
 const ROW: f64 = 15.0;
 const LEADERS: f64 = 9.0;
@@ -38,16 +40,35 @@ struct Label {
     at: f64,
     /// The row, from the lowest.
     row: usize,
-    /// Where its line passes each row up to its own, in which its middle stands.
+    /// Where its middle stands.
+    centre: f64,
+    /// Where its line passes each row below its own, and meets the label.
     through: Vec<f64>,
 }
 
+impl Label {
+    /// Where its line passes a row, or meets the label at the place nearest to it.
+    fn foot(&self, row: usize, centre: f64) -> f64 {
+        if row < self.row {
+            return centre;
+        }
+        let before = self.through.last().copied().unwrap_or(self.at);
+        let half = (0.5 * text::length(&self.text, SMALL) - WITHIN).max(0.0);
+        before.clamp(centre - half, centre + half)
+    }
+}
+
 impl Tags {
-    /// Arranges the labels over a frame, of which only left and right are looked at.
-    pub(super) fn of(panel: &Panel, area: Rect) -> Tags {
+    /// Arranges the labels over a frame, of which only left and right are looked at. What is
+    /// labelled at the same place of the panel above is not labelled again.
+    pub(super) fn of(panel: &Panel, above: Option<&Panel>, area: Rect) -> Tags {
+        let above = above.filter(|above| above.x == panel.x);
+        let is_labelled_above =
+            |layer: &Layer| above.is_some_and(|above| above.layers.contains(layer));
         let mut found: Vec<(f64, String, Meaning)> = panel
             .layers
             .iter()
+            .filter(|layer| !is_labelled_above(layer))
             .filter_map(|layer| match layer {
                 Layer::Reference(line) if line.across == Across::X && !line.label.is_empty() => {
                     let share = frame::along(&panel.x, line.at);
@@ -78,10 +99,7 @@ impl Tags {
                 }
             }
             // Quantiles are missed less than limits.
-            let least = found
-                .iter()
-                .rposition(|(_, _, meaning)| *meaning == Meaning::Guide)
-                .unwrap_or(found.len() - 1);
+            let least = least_missed(&found);
             left_out.push(found.remove(least).1);
         }
     }
@@ -99,16 +117,29 @@ impl Tags {
                 }
             }
             scene.line(&leader, Ink::Grey, 0.7);
-            let x = label.through.last().copied().unwrap_or(label.at);
-            let at = [x, height(label.row) - 0.5 * ROW];
+            let at = [label.centre, height(label.row) - 0.5 * ROW];
             scene.text(at, Anchor::Middle, SMALL, label.ink, &label.text);
         }
         for label in &self.left_out {
-            unnamed.note(format!(
-                "a line without its label, for want of room: {label}"
-            ));
+            unnamed.line(label);
         }
     }
+}
+
+/// The label without which the others have the most room: a quantile rather than a limit.
+fn least_missed(found: &[(f64, String, Meaning)]) -> usize {
+    let room = |index: usize| {
+        let before = index
+            .checked_sub(1)
+            .map_or(f64::NEG_INFINITY, |i| found[i].0);
+        let after = found.get(index + 1).map_or(f64::INFINITY, |next| next.0);
+        after - before
+    };
+    let has_guides = found.iter().any(|label| label.2 == Meaning::Guide);
+    (0..found.len())
+        .filter(|index| !has_guides || found[*index].2 == Meaning::Guide)
+        .min_by(|a, b| room(*a).total_cmp(&room(*b)))
+        .unwrap_or(0)
 }
 
 /// The labels in so many rows, where they fit.
@@ -127,6 +158,7 @@ fn arranged(
             ink: lines::label_ink(*meaning),
             at: *at,
             row: index % rows,
+            centre: *at,
             through: Vec::new(),
         })
         .collect();
@@ -151,13 +183,14 @@ fn arranged(
         let is_near = here
             .iter()
             .zip(&centres)
-            .all(|(label, centre)| (label.at - centre).abs() <= FAR);
-        let is_last_resort = rows == MOST_ROWS;
-        if !fits || !(is_near || is_last_resort) {
+            .all(|(label, centre)| (label.foot(row, *centre) - label.at).abs() <= FAR);
+        if !fits || !(is_near || found.len() == 1) {
             return None;
         }
         for (label, centre) in here.iter_mut().zip(centres) {
-            label.through.push(centre);
+            label.centre = centre;
+            let foot = label.foot(row, centre);
+            label.through.push(foot);
         }
     }
     Some(labels)

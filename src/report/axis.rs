@@ -6,7 +6,7 @@ use super::number::{NUMBERS, PLAIN, Scale, plain};
 /// Room beyond the outermost values, as a share of the range.
 const ROOM: f64 = 0.06;
 /// The same beyond the ends of bars, where something is written.
-const BEYOND_BARS: f64 = 0.18;
+const BEYOND_BARS: f64 = 0.36;
 /// A number without a unit is read well down to this size; smaller ones get a power of ten.
 const PLAIN_DOWN_TO: f64 = 2e-3;
 /// A range this small beside its values is counted from a round number within it.

@@ -2,6 +2,7 @@
 //! that is not so.
 
 mod cavities;
+mod charted;
 mod charts;
 mod command;
 mod formats;

@@ -40,21 +40,22 @@ pub(super) fn svg(area: Rect, columns: usize, levels: &[Option<u8>], enlarged: f
                 let [r, g, b] = ramp::colour(f64::from(level) / f64::from(LEVELS - 1));
                 let _ = writeln!(text, "<path fill=\"#{r:02x}{g:02x}{b:02x}\" d=\"{path}\"/>");
             }
-            None => text += &hatched(&path, enlarged),
+            None => text += &hatched(&path, [across[0], up[rows]], enlarged),
         }
     }
     text + "</g>\n"
 }
 
-fn hatched(path: &str, enlarged: f64) -> String {
+/// Hatching, under a name of its own for each place on the page.
+fn hatched(path: &str, [x, y]: [i64; 2], enlarged: f64) -> String {
     let (distance, width) = (HATCH.0 * enlarged, HATCH.1 * enlarged);
     format!(
-        "<defs><pattern id=\"absent\" patternUnits=\"userSpaceOnUse\" width=\"{distance}\" \
+        "<defs><pattern id=\"absent-{x}-{y}\" patternUnits=\"userSpaceOnUse\" width=\"{distance}\" \
          height=\"{distance}\" patternTransform=\"rotate(45)\">\
          <rect width=\"{width}\" height=\"{distance}\" fill=\"#a0a0a0\" \
          shape-rendering=\"auto\"/></pattern></defs>\n\
          <path fill=\"#ffffff\" d=\"{path}\"/>\n\
-         <path fill=\"url(#absent)\" d=\"{path}\"/>\n"
+         <path fill=\"url(#absent-{x}-{y})\" d=\"{path}\"/>\n"
     )
 }
 

@@ -11,6 +11,8 @@ pub(super) struct Occupied {
     leaders: Vec<[[f64; 2]; 2]>,
     /// Curves, each from point to point.
     curves: Vec<Vec<[f64; 2]>>,
+    /// Lines of the ground, which are better not written over.
+    edges: Vec<[[f64; 2]; 2]>,
 }
 
 /// A possible place of a label.
@@ -25,6 +27,10 @@ pub(super) struct Candidate {
 impl Occupied {
     pub(super) fn add_curve(&mut self, points: Vec<[f64; 2]>) {
         self.curves.push(points);
+    }
+
+    pub(super) fn add_edge(&mut self, edge: [[f64; 2]; 2]) {
+        self.edges.push(edge);
     }
 
     pub(super) fn add_box(&mut self, area: Rect) {
@@ -88,7 +94,9 @@ impl Occupied {
             if !within.contains(candidate.area) || !self.is_free(&candidate) {
                 continue;
             }
-            let covered = self.covered(candidate.area);
+            let edges = self.edges.iter();
+            let crossed = edges.filter(|[a, b]| candidate.area.meets(*a, *b)).count();
+            let covered = self.covered(candidate.area) + crossed;
             if best.is_none_or(|(least, _)| covered < least) {
                 best = Some((covered, candidate));
             }

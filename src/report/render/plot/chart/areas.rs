@@ -34,7 +34,7 @@ pub(super) fn ranges(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed
             if placed.area.left < x && x < placed.area.right {
                 let edge = [[x, area.top], [x, area.bottom]];
                 scene.line(&edge, Ink::Grey, 0.8);
-                occupied.add_curve(edge.to_vec());
+                occupied.add_edge(edge);
             }
         }
     }

@@ -54,7 +54,8 @@ pub(super) fn write(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<
 /// Draws the bars and their names.
 pub(super) fn draw(scene: &mut Scene, placed: &Placed<'_>) {
     let area = placed.area;
-    let names = area.left - placed.start - 7.0;
+    // Rounding must not cut the longest name.
+    let names = area.left - placed.start - 6.5;
     for (index, bar) in all(placed.panel).enumerate() {
         let y = middle(placed, index);
         let name = text::shortened(&bar.name, NUMBER, names);
@@ -134,7 +135,11 @@ fn write_end(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, ba
         },
         leader: None,
     });
-    if let Some(chosen) = occupied.take(area.grown(-2.0), candidates) {
+    // The order counts for more than a guide that is hidden.
+    let chosen = candidates
+        .into_iter()
+        .find_map(|candidate| occupied.take(area.grown(-2.0), [candidate]));
+    if let Some(chosen) = chosen {
         let at = [chosen.area.left, y];
         let is_over_bar = chosen.area.left < right && left < chosen.area.right;
         if is_over_bar || occupied.hides(chosen.area) {

@@ -35,7 +35,7 @@ pub(super) struct Placed<'a> {
 
 /// Where a value lies on an axis, from 0 to 1 within it.
 pub(super) fn along(axis: &Axis, value: f64) -> f64 {
-    if !(axis.from < axis.to) {
+    if axis.to <= axis.from {
         return 0.5;
     }
     let share = ticks::share(axis, value);

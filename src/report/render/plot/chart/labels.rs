@@ -35,9 +35,13 @@ impl Unnamed {
     }
 
     /// A straight line has no label.
-    pub(super) fn line(&mut self, label: &str) {
-        if !self.lines.iter().any(|line| line == label) {
-            self.lines.push(label.into());
+    pub(super) fn line(&mut self, label: &str, placed: &Placed<'_>) {
+        let line = match placed.panel.heading.as_str() {
+            "" => label.into(),
+            heading => format!("{label} ({heading})"),
+        };
+        if !self.lines.contains(&line) {
+            self.lines.push(line);
         }
     }
 
@@ -178,7 +182,7 @@ fn level(
             ground(placed).lay(scene, occupied, chosen.area);
             put(scene, chosen.area, label_ink(line.meaning), &label);
         }
-        None => unnamed.line(&line.label),
+        None => unnamed.line(&line.label, placed),
     }
 }
 
@@ -307,7 +311,7 @@ fn points(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnam
             continue;
         }
         let half = 0.5 * (SHAPE + text::length(&points.label, SMALL));
-        let aside = DOT + 8.0 + half;
+        let aside = DOT + 14.0 + half;
         let around = [
             [aside, 0.0],
             [-aside, 0.0],
@@ -392,6 +396,6 @@ fn name_contour(
                 &contour.label,
             );
         }
-        None => unnamed.line(&contour.label),
+        None => unnamed.line(&contour.label, placed),
     }
 }

@@ -16,6 +16,8 @@ const WITHIN: f64 = 6.0;
 const PASSING: f64 = 8.0;
 /// How far a label may stand from its line before another row is begun.
 const FAR: f64 = 30.0;
+/// The same where another label would have to be left out.
+const FARTHEST: f64 = 75.0;
 /// Height of a row, and of the lines between the frame and the lowest.
 const ROW: f64 = 15.0;
 const LEADERS: f64 = 9.0;
@@ -47,6 +49,13 @@ struct Label {
 }
 
 impl Label {
+    /// How far aside its line goes.
+    fn detour(&self) -> f64 {
+        let from = std::iter::once(&self.at).chain(&self.through);
+        let steps = from.zip(&self.through);
+        steps.map(|(from, to)| (to - from).abs()).sum()
+    }
+
     /// Where its line passes a row, or meets the label at the place nearest to it.
     fn foot(&self, row: usize, centre: f64) -> f64 {
         if row < self.row {
@@ -89,8 +98,15 @@ impl Tags {
         let mut left_out = Vec::new();
         let bounds = [area.left - 10.0, area.right + 10.0];
         loop {
-            for rows in 1..=MOST_ROWS {
-                if let Some(labels) = arranged(&found, rows, bounds) {
+            let near = (1..=MOST_ROWS).map(|rows| (rows, FAR));
+            let far = (1..=MOST_ROWS).map(|rows| (rows, FARTHEST));
+            for (rows, far) in near.chain(far) {
+                let ways = assignments(found.len(), rows);
+                let arranged = ways
+                    .iter()
+                    .filter_map(|rows| arranged(&found, rows, far, bounds));
+                let way = |labels: &Vec<Label>| labels.iter().map(Label::detour).sum::<f64>();
+                if let Some(labels) = arranged.min_by(|a, b| way(a).total_cmp(&way(b))) {
                     return Tags {
                         height: rows as f64 * ROW + LEADERS,
                         labels,
@@ -121,7 +137,7 @@ impl Tags {
             scene.text(at, Anchor::Middle, SMALL, label.ink, &label.text);
         }
         for label in &self.left_out {
-            unnamed.line(label);
+            unnamed.line(label, placed);
         }
     }
 }
@@ -142,12 +158,24 @@ fn least_missed(found: &[(f64, String, Meaning)]) -> usize {
         .unwrap_or(0)
 }
 
-/// The labels in so many rows, where they fit.
+/// In which row each of so many labels may stand: in turn, or all but one in the lowest.
+fn assignments(count: usize, rows: usize) -> Vec<Vec<usize>> {
+    let mut ways: Vec<Vec<usize>> = (0..rows)
+        .map(|first| (0..count).map(|index| (index + first) % rows).collect())
+        .collect();
+    if rows == 2 {
+        ways.extend((0..count).map(|top| (0..count).map(|i| usize::from(i == top)).collect()));
+    }
+    ways
+}
+
+/// The labels in their rows, where they fit.
 ///
 /// From the lowest row up: labels of higher rows need only room for their line to pass.
 fn arranged(
     found: &[(f64, String, Meaning)],
-    rows: usize,
+    rows: &[usize],
+    far: f64,
     [from, to]: [f64; 2],
 ) -> Option<Vec<Label>> {
     let mut labels: Vec<Label> = found
@@ -157,12 +185,12 @@ fn arranged(
             text: text.clone(),
             ink: lines::label_ink(*meaning),
             at: *at,
-            row: index % rows,
+            row: rows[index],
             centre: *at,
             through: Vec::new(),
         })
         .collect();
-    for row in 0..rows {
+    for row in 0..=rows.iter().copied().max().unwrap_or(0) {
         let mut here: Vec<&mut Label> = labels.iter_mut().filter(|l| l.row >= row).collect();
         let wished: Vec<f64> = here
             .iter()
@@ -183,7 +211,7 @@ fn arranged(
         let is_near = here
             .iter()
             .zip(&centres)
-            .all(|(label, centre)| (label.foot(row, *centre) - label.at).abs() <= FAR);
+            .all(|(label, centre)| (label.foot(row, *centre) - label.at).abs() <= far);
         if !fits || !(is_near || found.len() == 1) {
             return None;
         }

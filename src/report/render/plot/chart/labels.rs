@@ -20,6 +20,8 @@ const CLOSE: f64 = 3.0;
 /// What could not be written where it belongs.
 #[derive(Default)]
 pub(super) struct Unnamed {
+    /// Whether it goes without saying where.
+    is_of_one_panel: bool,
     marks: usize,
     sticks: usize,
     lines: Vec<String>,
@@ -27,6 +29,24 @@ pub(super) struct Unnamed {
 }
 
 impl Unnamed {
+    /// Nothing yet, of so many panels.
+    pub(super) fn of(panels: usize) -> Unnamed {
+        Unnamed {
+            is_of_one_panel: panels < 2,
+            ..Unnamed::default()
+        }
+    }
+
+    /// A line, curve or the like lies beyond the axes.
+    pub(super) fn outside(&mut self, label: &str, placed: &Placed<'_>) {
+        let heading = placed.panel.heading.as_str();
+        self.note(if self.is_of_one_panel || heading.is_empty() {
+            format!("outside the picture: {label}")
+        } else {
+            format!("outside the picture of {heading}: {label}")
+        });
+    }
+
     /// Says something beneath the picture, once.
     pub(super) fn note(&mut self, note: String) {
         if !self.notes.contains(&note) {
@@ -36,9 +56,11 @@ impl Unnamed {
 
     /// A straight line has no label.
     pub(super) fn line(&mut self, label: &str, placed: &Placed<'_>) {
-        let line = match placed.panel.heading.as_str() {
-            "" => label.into(),
-            heading => format!("{label} ({heading})"),
+        let heading = placed.panel.heading.as_str();
+        let line = if self.is_of_one_panel || heading.is_empty() {
+            label.into()
+        } else {
+            format!("{label} ({heading})")
         };
         if !self.lines.contains(&line) {
             self.lines.push(line);
@@ -269,7 +291,7 @@ fn curves(scene: &mut Scene, occupied: &mut Occupied, placed: &Placed<'_>, unnam
         let mut pieces = visible(placed, curve);
         if pieces.is_empty() {
             if curve.pieces.iter().any(|piece| !piece.is_empty()) {
-                unnamed.note(format!("outside the picture: {}", curve.label));
+                unnamed.outside(&curve.label, placed);
             }
             continue;
         }

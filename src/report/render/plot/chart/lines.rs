@@ -138,10 +138,7 @@ fn reference(
     };
     if !line.at.is_finite() || !points.iter().all(|point| is_within(area, *point)) {
         if !line.label.is_empty() {
-            unnamed.note(match placed.panel.heading.as_str() {
-                "" => format!("outside the picture: {}", line.label),
-                heading => format!("outside the picture of {heading}: {}", line.label),
-            });
+            unnamed.outside(&line.label, placed);
         }
         return;
     }

@@ -41,7 +41,7 @@ pub(super) fn scene(chart: &Chart) -> Scene {
     let columns = chart.columns.clamp(1, 2);
     let mut placed = side_by_side(chart, columns);
     let mut notes = chart.notes.clone();
-    let mut more = labels::Unnamed::default();
+    let mut more = labels::Unnamed::of(chart.panels.len());
     for row in placed.chunks_mut(columns) {
         let head = row.iter().map(Placed::head).fold(0.0, f64::max);
         let height = row.iter().map(|panel| panel.height).fold(0.0, f64::max);

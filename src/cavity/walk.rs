@@ -172,26 +172,34 @@ impl Part {
         values: &[T],
         visit: &mut impl FnMut(Leg<T>),
     ) {
-        let mut leg = |piece| visit(Leg { part: index, piece });
-        match &self.element {
+        // Gathered first, so that there is one place only from which `visit` is called: it is large,
+        // and inlined.
+        let (pieces, count) = self.pieces(share, values);
+        for piece in &pieces[..count] {
+            visit(Leg {
+                part: index,
+                piece: *piece,
+            });
+        }
+    }
+
+    #[inline(always)]
+    fn pieces<T: Real>(&self, share: f64, values: &[T]) -> Pieces<T> {
+        let mut pieces = [Piece::Opening; MOST_PIECES];
+        pieces[0] = match &self.element {
             Element::Mirror(mirror) => {
                 let power = mirror_power(mirror, self.swapped, self.before.phase(values), values);
-                leg(Piece::Kick(power.map(|p| p * -share)));
+                Piece::Kick(power.map(|p| p * -share))
             }
             Element::Gap { length, medium } => {
                 let stretch = Stretch::uniform(length.of(values), medium.phase(values));
-                leg(Piece::Stretch(PerPlane::both(stretch)));
+                Piece::Stretch(PerPlane::both(stretch))
             }
-            Element::Lens { power, .. } => {
-                leg(Piece::Kick(power.map(|slot| -slot.of(values))));
+            Element::Lens { power, .. } => Piece::Kick(power.map(|slot| -slot.of(values))),
+            Element::Slab(slab) => {
+                let outside = self.before.phase(values);
+                return slab_pieces(slab, self.swapped, outside, values);
             }
-            Element::Slab(slab) => walk_slab(
-                slab,
-                self.swapped,
-                self.before.phase(values),
-                values,
-                &mut leg,
-            ),
             Element::Duct {
                 length,
                 index,
@@ -199,26 +207,26 @@ impl Part {
                 antiguiding,
             } => {
                 let sign = if *antiguiding { -1.0 } else { 1.0 };
-                let stretch = strength.map(|slot| Stretch {
+                Piece::Stretch(strength.map(|slot| Stretch {
                     length: length.of(values),
                     index: index.phase(values),
                     strength_squared: Some(slot.of(values).squared() * sign),
-                });
-                leg(Piece::Stretch(stretch));
+                }))
             }
-            Element::Aperture => leg(Piece::Opening),
+            Element::Aperture => Piece::Opening,
             Element::Matrix { entries, .. } => {
-                let matrix = entries.map(|[a, b, c, d]| RayMatrix {
-                    a: T::constant(a),
-                    b: T::constant(b),
-                    c: T::constant(c),
-                    d: T::constant(d),
-                });
-                leg(Piece::Given(matrix));
+                Piece::Given(entries.map(|[a, b, c, d]| RayMatrix { a, b, c, d }.map(T::constant)))
             }
-        }
+        };
+        (pieces, 1)
     }
 }
+
+/// A slab with a lens at its middle: two faces, two stretches, a kick.
+const MOST_PIECES: usize = 5;
+
+/// What a part does, and how many of the pieces count.
+type Pieces<T> = ([Piece<T>; MOST_PIECES], usize);
 
 /// Dioptric power of a mirror in the file's planes.
 #[inline(always)]
@@ -243,13 +251,7 @@ pub(crate) fn slab_crossing<T: Real>(slab: &Slab, outside: T, values: &[T]) -> C
 }
 
 #[inline(always)]
-fn walk_slab<T: Real>(
-    slab: &Slab,
-    swapped: bool,
-    outside: T,
-    values: &[T],
-    leg: &mut impl FnMut(Piece<T>),
-) {
+fn slab_pieces<T: Real>(slab: &Slab, swapped: bool, outside: T, values: &[T]) -> Pieces<T> {
     let own = |pair: PerPlane<RayMatrix<T>>| if swapped { pair.swapped() } else { pair };
     let crossing = slab_crossing(slab, outside, values);
     let path = slab.thickness.of(values) / crossing.cos_to;
@@ -257,31 +259,30 @@ fn walk_slab<T: Real>(
 
     // Convex from outside: the entrance has its centre on the far side, the exit on the near side.
     let entrance = PerPlane::both(slab.entrance.of(values));
-    leg(Piece::Face(End::Entrance, own(crossing.matrices(entrance))));
+    let exit = PerPlane::both(-slab.exit.of(values));
+    let entrance = Piece::Face(End::Entrance, own(crossing.matrices(entrance)));
+    let exit = Piece::Face(End::Exit, own(crossing.reversed().matrices(exit)));
 
+    let nothing = Piece::Opening;
     let whole = Piece::Stretch(PerPlane::both(uniform));
     let half = Piece::Stretch(PerPlane::both(uniform.part(0.5)));
-    match &slab.thermal {
-        None => leg(whole),
-        Some(lens) => {
-            let power = thermal_power(lens, values);
-            let kick = Piece::Kick(power.map(|p| -p));
-            match lens.place {
-                ThermalPlace::Spread => leg(Piece::Stretch(power.map(|p| Stretch {
-                    strength_squared: Some(p / (crossing.index_to * path)),
-                    ..uniform
-                }))),
-                ThermalPlace::Entrance => [kick, whole].into_iter().for_each(&mut *leg),
-                ThermalPlace::Middle => [half, kick, half].into_iter().for_each(&mut *leg),
-                ThermalPlace::Exit => [whole, kick].into_iter().for_each(&mut *leg),
-            }
+    let Some(lens) = &slab.thermal else {
+        return ([entrance, whole, exit, nothing, nothing], 3);
+    };
+    let power = thermal_power(lens, values);
+    let kick = Piece::Kick(power.map(|p| -p));
+    match lens.place {
+        ThermalPlace::Spread => {
+            let spread = Piece::Stretch(power.map(|p| Stretch {
+                strength_squared: Some(p / (crossing.index_to * path)),
+                ..uniform
+            }));
+            ([entrance, spread, exit, nothing, nothing], 3)
         }
+        ThermalPlace::Entrance => ([entrance, kick, whole, exit, nothing], 4),
+        ThermalPlace::Middle => ([entrance, half, kick, half, exit], 5),
+        ThermalPlace::Exit => ([entrance, whole, kick, exit, nothing], 4),
     }
-    let exit = PerPlane::both(-slab.exit.of(values));
-    leg(Piece::Face(
-        End::Exit,
-        own(crossing.reversed().matrices(exit)),
-    ));
 }
 
 /// Power of a thermal lens in the file's planes, in 1/m.

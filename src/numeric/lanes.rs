@@ -142,7 +142,8 @@ impl Real for Lanes {
         let steep = across.less(up);
         let (low, high) = (up.min(across), up.max(across));
         let flat = low.less(high * TAN_22_5);
-        let both = |near: f64, far: f64| Self::select(flat, Self::constant(near), Self::constant(far));
+        let both =
+            |near: f64, far: f64| Self::select(flat, Self::constant(near), Self::constant(far));
         let tangent = both(TAN_11_25, TAN_33_75);
         let nothing = high.less(Self::constant(f64::MIN_POSITIVE));
         let across = Self::select(nothing, Self::constant(1.0), high + tangent * low);
@@ -190,11 +191,7 @@ impl Real for Lanes {
     }
     #[inline(always)]
     fn less(self, other: Self) -> LaneMask {
-        LaneMask(each(
-            |i| {
-                if self.0[i] < other.0[i] { u64::MAX } else { 0 }
-            },
-        ))
+        LaneMask(each(|i| if self.0[i] < other.0[i] { u64::MAX } else { 0 }))
     }
     #[inline(always)]
     fn select(mask: LaneMask, yes: Self, no: Self) -> Self {

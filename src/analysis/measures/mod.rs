@@ -69,12 +69,8 @@ impl<'c> Evaluator<'c> {
             }
         }
         let is_lossy = |slot: &Slot| moves.contains(slot);
-        self.finesse = (!airy::loss_slots(self.cavity).iter().any(is_lossy)).then(|| {
-            airy::finesse(airy::round_trip_attenuation(
-                self.cavity,
-                &book.nominal(),
-            ))
-        });
+        self.finesse = (!airy::loss_slots(self.cavity).iter().any(is_lossy))
+            .then(|| airy::finesse(airy::round_trip_attenuation(self.cavity, &book.nominal())));
         let measures = &self.measures;
         self.route = Route::new(self.cavity, Some(&moves), |part| is_watched(measures, part));
         self

@@ -51,11 +51,7 @@ impl<'a, T: Real> Reading<'a, T> {
     }
 
     #[inline(always)]
-    pub(super) fn measure(
-        &self,
-        measure: Measure,
-        multiples: &mut Multiples<T>,
-    ) -> (T, T::Mask) {
+    pub(super) fn measure(&self, measure: Measure, multiples: &mut Multiples<T>) -> (T, T::Mask) {
         let always = T::always(true);
         match measure {
             Measure::Margin(None) => {
@@ -119,9 +115,7 @@ impl<'a, T: Real> Reading<'a, T> {
         match within {
             Within::Nothing => ray,
             Within::Fixed(inside) => ray.after_fixed(inside.entered[plane]),
-            Within::Walked(number) => {
-                self.start[plane].after(self.inside[*number].entered[plane])
-            }
+            Within::Walked(number) => self.start[plane].after(self.inside[*number].entered[plane]),
         }
         .beam()
     }
@@ -152,25 +146,23 @@ impl<'a, T: Real> Reading<'a, T> {
     /// β at a part's middle, or at the part itself where it has no inside.
     #[inline(always)]
     fn middle(&self, part: usize, plane: Plane) -> T {
-        if let Some((_, ray)) = self.stretch(part, 1, plane) {
-            return ray.beta();
-        }
-        match self.stretch(part, 0, plane) {
-            Some((stretch, ray)) => ray.after(stretch.part(0.5).matrix()).beta(),
-            None => self.arriving(part, plane).1.beta(),
+        // The middle is where a second stretch begins, or half-way along the only one.
+        match (self.stretch(part, 0, plane), self.stretch(part, 1, plane)) {
+            (_, Some((_, ray))) => ray.beta(),
+            (Some((stretch, ray)), None) => ray.after(stretch.part(0.5).matrix()).beta(),
+            _ => self.arriving(part, plane).1.beta(),
         }
     }
 
     #[inline(always)]
     fn least(&self, part: usize, plane: Plane) -> T {
-        let Some((stretch, ray)) = self.stretch(part, 0, plane) else {
-            return self.arriving(part, plane).1.beta();
-        };
-        let least = stretch.least_beta(ray.beam());
-        match self.stretch(part, 1, plane) {
-            Some((stretch, ray)) => least.min(stretch.least_beta(ray.beam())),
-            None => least,
+        let mut least = self.arriving(part, plane).1.beta();
+        for which in [0, 1] {
+            if let Some((stretch, ray)) = self.stretch(part, which, plane) {
+                least = least.min(stretch.least_beta(ray.beam()));
+            }
         }
+        least
     }
 
     /// Distance of the waist from a part's start, in its medium.
@@ -257,4 +249,3 @@ impl<'a, T: Real> Reading<'a, T> {
         self.modes.tangential.stable & self.modes.sagittal.stable
     }
 }
-

@@ -110,24 +110,25 @@ impl<T: Real> Stretch<T> {
     #[inline(always)]
     pub fn least_beta(self, entering: Beam<T>) -> T {
         let Some(strength_squared) = self.strength_squared else {
-            return self.least_beta_with_one_extremum(entering);
+            return self.least_of_one_extremum(entering, entering.after(self.matrix()));
         };
         // β repeats itself every half period γL = π of the rays, so that half of a shorter
         // stretch holds one extremum at the most.
         let half = self.part(0.5);
-        let middle = entering.after(half.matrix());
+        let matrix = half.matrix();
+        let middle = entering.after(matrix);
+        let leaving = middle.after(matrix);
         let short = half
-            .least_beta_with_one_extremum(entering)
-            .min(half.least_beta_with_one_extremum(middle));
+            .least_of_one_extremum(entering, middle)
+            .min(half.least_of_one_extremum(middle, leaving));
         let z = strength_squared * self.length.squared();
         let long = T::constant(PI * PI).less(z);
         T::select(long, self.beta_at_waist(entering), short)
     }
 
     #[inline(always)]
-    fn least_beta_with_one_extremum(self, entering: Beam<T>) -> T {
+    fn least_of_one_extremum(self, entering: Beam<T>, leaving: Beam<T>) -> T {
         let zero = T::constant(0.0);
-        let leaving = entering.after(self.matrix());
         let at_ends = entering.beta.min(leaving.beta);
         let least = self.beta_at_waist(entering);
         let converges = T::select(zero.less(entering.alpha), least, at_ends);

@@ -6,6 +6,7 @@ use std::ops::Range;
 use std::path::Path;
 
 use super::{Answer, CavityFile, WRONG_INPUT};
+use crate::cavity::{Cavity, Measure};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
 use crate::file::{self, LARGEST_FILE, Loaded};
 use crate::quantity::{self, Kind, Spread};
@@ -60,6 +61,32 @@ pub(super) fn quantity(
             Some(format!("write it like \"{}\"", kind.example())),
         )),
     }
+}
+
+/// Measures typed in one list, with their names.
+pub(super) fn measures(cavity: &Cavity, text: &str) -> Result<Vec<(String, Measure)>, Answer> {
+    let mut at = 0;
+    let mut found = Vec::new();
+    for piece in text.split(',') {
+        let start = at + (piece.len() - piece.trim_start().len());
+        at += piece.len() + 1;
+        let name = piece.trim();
+        let span = start..start + name.len();
+        match Measure::parse(name, cavity) {
+            Ok(measure) => found.push((name.to_string(), measure)),
+            Err(error) => {
+                let help = Some(error.help);
+                return Err(refuse_argument(
+                    "--measure",
+                    text,
+                    span,
+                    error.message,
+                    help,
+                ));
+            }
+        }
+    }
+    Ok(found)
 }
 
 /// What is wrong with the text of an argument.

@@ -3,9 +3,14 @@
 mod check;
 mod envelope;
 pub mod materials;
+mod measured;
 mod sections;
+mod tolerance;
+mod tolerance_chart;
 mod verdict;
 mod waists;
 
 pub use check::describe as check;
 pub use envelope::describe as envelope;
+pub use tolerance::describe as tolerance;
+pub use tolerance_chart::describe as tolerance_chart;

@@ -5,6 +5,7 @@ mod manual;
 mod materials;
 mod new;
 mod schema;
+mod tolerance;
 
 use std::io::Write;
 use std::process::{Command, Output, Stdio};
@@ -75,6 +76,7 @@ fn every_help_fits_80_columns_and_shows_an_example() {
     for command in [
         "check",
         "materials",
+        "tolerance",
         "new",
         "schema",
         "completions",

@@ -8,6 +8,8 @@ use crate::study::tolerance::{Tolerance, Worst};
 
 /// Contributions smaller than this are not worth a line.
 const NEGLIGIBLE: f64 = 0.01;
+/// Quantities that are named for one measure.
+const MOST_SHARES: usize = 5;
 /// Modes that are named.
 const MOST_CULPRITS: usize = 8;
 
@@ -243,32 +245,27 @@ fn contributions(document: &mut Document, found: &Tolerance) {
         return;
     }
     document.heading("Where the variance comes from");
-    let mut table = Table::new(&[
-        "<measure",
-        "<share of its variance: alone (with interactions)",
-    ]);
-    let mut names: Vec<&str> = Vec::new();
+    let mut table = Table::new(&["<measure", "<quantity", "alone", "with\ninteractions"]);
+    let mut last = "";
+    let mut named = 0;
     for share in &found.contributions {
-        if !names.contains(&share.measure.as_str()) {
-            names.push(&share.measure);
+        let is_first = share.measure != last;
+        named = if is_first { 1 } else { named + 1 };
+        last = &share.measure;
+        if named > MOST_SHARES || share.total < NEGLIGIBLE {
+            continue;
         }
-    }
-    for name in names {
-        let shares: Vec<String> = found
-            .contributions
-            .iter()
-            .filter(|share| share.measure == name && share.total > NEGLIGIBLE)
-            .map(|share| {
-                let alone = fixed(100.0 * share.first_order.max(0.0), 0);
-                let total = fixed(100.0 * share.total, 0);
-                if alone == total {
-                    format!("{} {alone} %", share.quantity)
-                } else {
-                    format!("{} {alone} ({total}) %", share.quantity)
-                }
-            })
-            .collect();
-        table.rows.push(vec![name.into(), shares.join(", ")]);
+        let percent = |share: f64| format!("{} %", fixed(100.0 * share.max(0.0), 0));
+        table.rows.push(vec![
+            if is_first {
+                share.measure.clone()
+            } else {
+                String::new()
+            },
+            share.quantity.clone(),
+            percent(share.first_order),
+            percent(share.total),
+        ]);
     }
     document.push(Block::Table(table));
     let worst = found

@@ -70,7 +70,7 @@ fn wrong_input_is_told_once_and_clearly() {
     );
     let said = wrong(&["tolerance", RING, "--yield", "120 %"]);
     assert!(said.contains("--yield"), "{said}");
-    let said = wrong(&["tolerance", "cavities/two-mirror.toml"]);
+    let said = wrong(&["tolerance", "cavities/confocal-analyser.toml"]);
     assert!(said.contains("has a tolerance"), "{said}");
     assert!(!wrong(&["tolerance", RING, "--samples", "0"]).is_empty());
     assert!(wrong(&["tolerance", RING, "--apart", "-1"]).contains("above zero"));

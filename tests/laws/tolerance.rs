@@ -91,12 +91,11 @@ fn small_tolerances_propagate_linearly() {
 }
 
 #[test]
-fn threads_and_instructions_do_not_change_a_byte() {
+fn the_number_of_threads_does_not_change_a_byte() {
     let cavity = load(RING, &[]);
     let options = Options {
         measures: measures(&cavity, &["margin", "mode_clearance"]),
         samples: Some(50_000),
-        wanted: Some(0.9),
         ..Options::default()
     };
     let [one, three] = [1, 3].map(|threads| {
@@ -315,12 +314,6 @@ fn a_budget_reaches_what_is_wanted_and_tightening_helps() {
         "{}",
         rewritten.passing
     );
-    for row in &found.tightening {
-        assert!(
-            row.yield_if_perfect + 0.02 > row.yield_if_doubled,
-            "{row:?}"
-        );
-    }
     assert!(found.tightening[0].yield_if_perfect > found.tightening[0].yield_as_is);
 }
 

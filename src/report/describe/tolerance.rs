@@ -1,10 +1,10 @@
 //! `tolerance` for people: the yield first, then what fails, what spoils it and what to do.
 
 use super::measured::{measured, wanted};
-use crate::quantity::human_spread;
+use crate::quantity::{Kind, Spread, human_spread};
 use crate::report::document::{Block, Document, Table, Tone};
-use crate::report::number::{fixed, significant};
-use crate::study::tolerance::{Tolerance, Worst};
+use crate::report::number::{fixed, plain, significant};
+use crate::study::tolerance::{Tolerance, Varied, Worst};
 
 /// Contributions smaller than this are not worth a line.
 const NEGLIGIBLE: f64 = 0.01;
@@ -176,13 +176,25 @@ fn measures(document: &mut Document, found: &Tolerance) {
     document.push(Block::Table(table));
 }
 
+/// A tolerance as one would write it: angles in degrees, unless they are tiny.
+fn tolerance_of(one: &Varied) -> String {
+    let (spread, kind) = one.spread;
+    if let (Spread::Limits { below, above }, Kind::Angle) = (spread, kind)
+        && below == above
+        && above.to_degrees() >= 0.01
+    {
+        return format!("± {}°", plain(above.to_degrees(), 3));
+    }
+    human_spread(spread, kind, 3)
+}
+
 /// The spread of a quantity, or of those that move together.
 fn spread_of(found: &Tolerance, quantity: &str) -> String {
     let spreads: Vec<String> = found
         .varied
         .iter()
         .filter(|one| one.quantity == quantity || one.moves_with.as_deref() == Some(quantity))
-        .map(|one| human_spread(one.spread.0, one.spread.1, 3))
+        .map(|one| tolerance_of(one))
         .collect();
     match &spreads[..] {
         [first, others @ ..] if others.iter().all(|other| other == first) => first.clone(),
@@ -197,7 +209,7 @@ fn quantities(document: &mut Document, found: &Tolerance) {
         for one in &found.varied {
             table.rows.push(vec![
                 one.quantity.clone(),
-                human_spread(one.spread.0, one.spread.1, 3),
+                tolerance_of(one),
                 one.shape.into(),
             ]);
         }
@@ -318,6 +330,7 @@ fn worst(document: &mut Document, found: &Tolerance) {
         let at: Vec<String> = worst
             .at
             .iter()
+            .filter(|place| place.share != 0.0)
             .map(|place| {
                 let share = match place.share {
                     s if s >= 0.995 => "high".to_string(),

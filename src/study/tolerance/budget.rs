@@ -78,7 +78,9 @@ pub(super) fn of(
     // Tightening any member of a group tightens all of them.
     let mut costs = vec![0.0; factors.len()];
     for one in &sampler.spreads.quantities {
-        costs[one.factor] += cavity.tolerancing.cost_of(one.slot);
+        if factors[one.factor].matters {
+            costs[one.factor] += cavity.tolerancing.cost_of(one.slot);
+        }
     }
     let search = Search {
         sampler,
@@ -89,7 +91,7 @@ pub(super) fn of(
     let mut best = search.cost(&search.widest(MAIN, SEARCH, &proportions, 9));
     let rounds = STEPS.len() * factors.len();
     for (round, step) in STEPS.iter().enumerate() {
-        for factor in 0..factors.len() {
+        for factor in (0..factors.len()).filter(|factor| factors[*factor].matters) {
             let done = (round * factors.len() + factor) as f64 / rounds as f64;
             if !progress(Stage::Budget, done) {
                 return None;
@@ -119,6 +121,7 @@ pub(super) fn of(
         tolerances: factors
             .iter()
             .zip(widths)
+            .filter(|(factor, _)| factor.matters)
             .map(|(factor, scale)| Allowance {
                 quantity: factor.name.clone(),
                 scale,

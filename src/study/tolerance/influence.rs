@@ -6,8 +6,9 @@ use crate::quantity::Spread;
 
 /// The quantities of a cavity, sorted by what they do to a study.
 pub(super) struct Influence {
-    /// With a spread, and of influence.
-    pub(super) varied: Vec<Slot>,
+    /// With a spread, and of influence; and whether on what is described, or only on how near modes
+    /// count as near.
+    pub(super) varied: Vec<(Slot, bool)>,
     /// Of influence but without a spread, of those that a builder makes.
     pub(super) perfect: Vec<String>,
     /// With a spread but of no influence.
@@ -17,7 +18,8 @@ pub(super) struct Influence {
 /// A change that shows an influence where there is no spread to try.
 const TRIAL: f64 = 1e-3;
 
-pub(super) fn of(cavity: &Cavity, measures: &[Measure]) -> Influence {
+/// Sorts the quantities of a cavity; the first `described` measures are described.
+pub(super) fn of(cavity: &Cavity, measures: &[Measure], described: usize) -> Influence {
     let evaluator = Evaluator::new(cavity, measures.to_vec());
     let nominal = cavity.book().nominal();
     let mut workspace = Workspace::default();
@@ -31,13 +33,20 @@ pub(super) fn of(cavity: &Cavity, measures: &[Measure]) -> Influence {
         seen
     };
     let at_nominal = look(&nominal);
+    // Whether anything moves, and whether anything that is described does.
     let mut moves = |slot: Slot, to: [f64; 2]| {
-        to.into_iter().any(|value| {
+        let (mut any, mut matters) = (false, false);
+        for value in to {
             let mut values = nominal.clone();
             values[slot.index()] = value;
             cavity.book().follow_ties(&mut values);
-            look(&values) != at_nominal
-        })
+            let pairs = at_nominal.iter().zip(look(&values)).enumerate();
+            for (index, _) in pairs.filter(|(_, (before, after))| *before != after) {
+                any = true;
+                matters |= index < described || index >= measures.len();
+            }
+        }
+        (any, matters)
     };
     let mut found = Influence {
         varied: Vec::new(),
@@ -51,7 +60,8 @@ pub(super) fn of(cavity: &Cavity, measures: &[Measure]) -> Influence {
         let by = match entry.spread {
             Spread::Exact => {
                 let is_made = entry.origin == Origin::Written && is_made(entry);
-                if is_made && moves(slot, [entry.value * (1.0 + TRIAL), entry.value + 1e-9]) {
+                let trials = [entry.value * (1.0 + TRIAL), entry.value + 1e-9];
+                if is_made && moves(slot, trials).1 {
                     found.perfect.push(entry.address.clone());
                 }
                 continue;
@@ -59,10 +69,9 @@ pub(super) fn of(cavity: &Cavity, measures: &[Measure]) -> Influence {
             Spread::Limits { below, above } => [-below, above],
             Spread::Standard { uncertainty } => [-uncertainty, uncertainty],
         };
-        if moves(slot, by.map(|by| entry.displaced(by))) {
-            found.varied.push(slot);
-        } else {
-            found.idle.push(entry.address.clone());
+        match moves(slot, by.map(|by| entry.displaced(by))) {
+            (true, matters) => found.varied.push((slot, matters)),
+            (false, _) => found.idle.push(entry.address.clone()),
         }
     }
     found

@@ -119,7 +119,7 @@ pub fn tolerance(
     let nominal = nominal_values(cavity, &[Measure::Finesse])[0];
     measures.push(Measure::Finesse);
 
-    let influence = influence::of(cavity, &measures);
+    let influence = influence::of(cavity, &measures, named.len());
     if influence.varied.is_empty() {
         return Err(Nothing::NoSpread);
     }

@@ -36,6 +36,8 @@ pub(super) struct Spreading {
 pub(super) struct Factor {
     /// Its addresses.
     pub(super) name: String,
+    /// Whether anything that is described depends on it.
+    pub(super) matters: bool,
     /// Coefficient between its members, where there are several.
     correlation: Option<f64>,
     members: Vec<usize>,
@@ -54,13 +56,13 @@ const WORDS_PER_CHUNK: u128 = 1 << 24;
 
 impl Spreads {
     /// The spreads of the given quantities.
-    pub(super) fn new(cavity: &Cavity, slots: &[Slot], seed: u64) -> Spreads {
+    pub(super) fn new(cavity: &Cavity, slots: &[(Slot, bool)], seed: u64) -> Spreads {
         let mut spreads = Spreads {
             quantities: Vec::new(),
             factors: Vec::new(),
             seed,
         };
-        for &slot in slots {
+        for &(slot, matters) in slots {
             let entry = cavity.book().entry(slot);
             let (middle, size, is_normal) = match entry.spread {
                 Spread::Exact => continue,
@@ -83,6 +85,7 @@ impl Spreads {
             let factor = known.unwrap_or_else(|| {
                 spreads.factors.push(Factor {
                     name: String::new(),
+                    matters: false,
                     correlation: group.map(|group| group.correlation),
                     members: Vec::new(),
                 });
@@ -94,6 +97,7 @@ impl Spreads {
             }
             cause.name += &entry.address;
             cause.members.push(index);
+            cause.matters |= matters;
             spreads.quantities.push(Spreading {
                 slot,
                 middle,
@@ -174,10 +178,12 @@ impl Spreads {
         }
     }
 
-    /// Quantities that can only move together; each of the others alone.
+    /// Quantities that can only move together; each of the others alone. Those on which nothing
+    /// depends that is described are left out.
     pub(super) fn movers(&self) -> Vec<Vec<usize>> {
         self.factors
             .iter()
+            .filter(|factor| factor.matters)
             .flat_map(|factor| match factor.correlation {
                 Some(correlation) if correlation >= 1.0 => vec![factor.members.clone()],
                 _ => factor.members.iter().map(|one| vec![*one]).collect(),

@@ -22,6 +22,9 @@ pub(super) fn of(
     let as_is = sampler.verdicts(MAIN, chunks, &vec![1.0; factors.len()]);
     let mut rows = Vec::with_capacity(factors.len());
     for (index, factor) in factors.iter().enumerate() {
+        if !factor.matters {
+            continue;
+        }
         if !progress(Stage::Tightening, index as f64 / factors.len() as f64) {
             return None;
         }

@@ -1,33 +1,42 @@
 //! Shares of every measure's variance, by the samples of the study.
 
+use std::ops::Range;
+
 use rayon::prelude::*;
 
 use super::result::Contribution;
 use super::sample::{MAIN, SECOND, Sampler};
 use super::shares::{self, BATCHES, Share};
-use super::{Stage, chunks};
+use super::{Stage, affordable, chunks};
 use crate::cavity::Measure;
 use crate::numeric::{LANES, LaneMask, Lanes};
 use crate::study::batch::BLOCKS;
 
-/// Samples of each of the two sets.
-pub(super) const SAMPLES: u64 = 1 << 16;
+/// Samples of each of the two sets, at most.
+const MOST: u64 = 1 << 16;
 
-/// The contributions of all factors to all measures, the largest first for each; none where the study
-/// was ended.
+/// The contributions of all factors to all measures, the largest first for each, and on how many
+/// samples; none where the study was ended.
 pub(super) fn of(
     sampler: &Sampler<'_>,
     named: &[(String, Measure)],
     nominals: &[Option<f64>],
     progress: &mut dyn FnMut(Stage, f64) -> bool,
-) -> Option<Vec<Contribution>> {
-    if !progress(Stage::Contributions, 0.0) {
-        return None;
+) -> Option<(Vec<Contribution>, u64)> {
+    let samples = affordable(sampler.spreads.factors.len() + 2, MOST);
+    let per_batch = chunks(samples) / BATCHES as u64;
+    let all: Vec<u64> = (0..BATCHES as u64).collect();
+    let mut batches: Vec<Vec<shares::Batch>> = Vec::new();
+    // A few batches at a time, so that the study can be ended in between.
+    for some in all.chunks(4) {
+        if !progress(Stage::Contributions, some[0] as f64 / BATCHES as f64) {
+            return None;
+        }
+        batches.par_extend(some.par_iter().map(|index| {
+            let chunks = index * per_batch..(index + 1) * per_batch;
+            batch(sampler, named.len(), nominals, chunks)
+        }));
     }
-    let batches: Vec<Vec<shares::Batch>> = (0..BATCHES as u64)
-        .into_par_iter()
-        .map(|index| batch(sampler, named.len(), nominals, index))
-        .collect();
     let mut found = Vec::new();
     for (measure, (name, _)) in named.iter().enumerate() {
         let of_measure: Vec<shares::Batch> =
@@ -52,7 +61,7 @@ pub(super) fn of(
             total_u: share.total_u,
         }));
     }
-    progress(Stage::Contributions, 1.0).then_some(found)
+    Some((found, samples))
 }
 
 /// The values of one set of draws, and where they count.
@@ -65,16 +74,15 @@ fn batch(
     sampler: &Sampler<'_>,
     measures: usize,
     nominals: &[Option<f64>],
-    index: u64,
+    chunks: Range<u64>,
 ) -> Vec<shares::Batch> {
     let factors = sampler.spreads.factors.len();
     let quantities = sampler.spreads.quantities.len();
     let mut batches = vec![shares::Batch::new(factors); measures];
     let mut room = sampler.room();
     let (mut a, mut b) = (room.draws.clone(), room.draws.clone());
-    let per_batch = chunks(SAMPLES) / BATCHES as u64;
     let mut exchanged = vec![0.0; factors];
-    for chunk in index * per_batch..(index + 1) * per_batch {
+    for chunk in chunks {
         sampler.spreads.draw(MAIN, chunk, &mut a);
         sampler.spreads.draw(SECOND, chunk, &mut b);
         let mut look = |draws: &[Lanes]| {

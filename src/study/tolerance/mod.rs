@@ -161,11 +161,10 @@ pub fn tolerance(
     }
     let mut go_on = |stage, share| progress(stage, share);
     found.stopped = !(|| {
-        found.contributions = contributions::of(&sampler, &named, &nominals, &mut go_on)?;
-        found.contribution_samples = contributions::SAMPLES;
+        (found.contributions, found.contribution_samples) =
+            contributions::of(&sampler, &named, &nominals, &mut go_on)?;
         if !plan.limits.is_empty() || found.unstable > 0.0 {
-            found.tightening = tighten::of(&sampler, &mut go_on)?;
-            found.tightening_samples = tighten::SAMPLES;
+            (found.tightening, found.tightening_samples) = tighten::of(&sampler, &mut go_on)?;
         }
         found.worst = worst::of(cavity, &sampler, &found.limits, &mut go_on)?;
         if !cavity.tolerancing.adjust.is_empty() {
@@ -464,6 +463,15 @@ impl Tolerance {
             .map(|share| (share.quantity.as_str(), share.first_order))
             .collect()
     }
+}
+
+/// Evaluations that each part of a study may spend, a few seconds' worth.
+const EVALUATIONS: u64 = 1 << 22;
+
+/// Samples that can be afforded when each takes so many evaluations: at most `most`, in whole tasks.
+fn affordable(evaluations: usize, most: u64) -> u64 {
+    let tasks = (EVALUATIONS / evaluations as u64).min(most) / TASK_SAMPLES;
+    tasks.max(1) * TASK_SAMPLES
 }
 
 /// Chunks that hold so many samples.

@@ -48,13 +48,7 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
     if let Some(path) = &typed.csv {
         let table = render::csv::stations(&check)
             .map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
-        output::write_whole(path, &table).map_err(|error| {
-            let path = path.display().to_string();
-            Answer::wrong(format!(
-                "error: cannot write the table {}: {error}\n",
-                path.escape_debug()
-            ))
-        })?;
+        output::write_table(path, &table)?;
     }
     let good = check.stable && check.limits.iter().all(|limit| limit.holds);
     let status = if good { FINE } else { NO };

@@ -11,6 +11,8 @@ mod new;
 mod output;
 mod picture;
 mod schema;
+mod sweep;
+mod vary;
 
 use std::ffi::OsString;
 use std::io::{ErrorKind, Write};
@@ -34,12 +36,11 @@ const WRONG_INPUT: u8 = 2;
 const FAULT: u8 = 3;
 
 /// Commands that are named but cannot be given yet.
-const LATER: [&str; 12] = [
+const LATER: [&str; 11] = [
     "modes",
     "response",
     "couple",
     "fit-beam",
-    "sweep",
     "tolerance",
     "tilt",
     "losses",
@@ -72,6 +73,8 @@ enum Colour {
 enum Command {
     /// Is the cavity stable, how far may each part move, how large is the beam everywhere?
     Check(check::Typed),
+    /// Any measure against one or two quantities; all ranges of stability, edges solved
+    Sweep(sweep::Typed),
     /// Which materials are known, with their sources, and what is their index at a wavelength?
     Materials(materials::Typed),
     /// Print or write a cavity file to start from
@@ -155,6 +158,7 @@ pub fn run() -> ExitCode {
     };
     let answer = catch_unwind(|| match &typed.command {
         Command::Check(typed) => check::run(typed),
+        Command::Sweep(typed) => sweep::run(typed),
         Command::Materials(typed) => materials::run(typed),
         Command::New(typed) => new::run(typed),
         Command::Schema(_) => schema::run(),

@@ -3,6 +3,8 @@
 use std::io::{ErrorKind, Write};
 use std::path::Path;
 
+use super::Answer;
+
 /// Writes beside the target and renames, so that a reader never meets half a file.
 pub(super) fn write_whole(path: &Path, bytes: &[u8]) -> std::io::Result<()> {
     if path.is_dir() {
@@ -25,6 +27,17 @@ pub(super) fn write_whole(path: &Path, bytes: &[u8]) -> std::io::Result<()> {
     file.flush()?;
     file.persist(path).map_err(|error| plain(&error.error))?;
     Ok(())
+}
+
+/// Writes a table, or says why it cannot be written.
+pub(super) fn write_table(path: &Path, table: &[u8]) -> Result<(), Answer> {
+    write_whole(path, table).map_err(|error| {
+        let path = path.display().to_string();
+        Answer::wrong(format!(
+            "error: cannot write the table {}: {error}\n",
+            path.escape_debug()
+        ))
+    })
 }
 
 /// The error in words that do not speak of the temporary file.

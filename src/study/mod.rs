@@ -1,3 +1,4 @@
 //! Many cavities, few analyses: sweeps and tolerances.
 
 pub mod batch;
+pub mod sweep;

@@ -74,6 +74,7 @@ fn every_help_fits_80_columns_and_shows_an_example() {
     fits_80_columns(&fine(&["--help"]));
     for command in [
         "check",
+        "sweep",
         "materials",
         "new",
         "schema",

@@ -388,7 +388,7 @@ fn length_to(x: f64, digits: usize) -> String {
 }
 
 /// A value of a quantity in the unit of its kind.
-fn value(x: f64, kind: Kind) -> String {
+pub(super) fn value(x: f64, kind: Kind) -> String {
     match kind {
         Kind::Length => length(x),
         Kind::Radius if x == 0.0 => "flat".into(),
@@ -569,7 +569,7 @@ fn limits(document: &mut Document, limits: &[LimitCheck]) {
 }
 
 /// The number of a measure with its unit.
-fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> String) -> String {
+pub(super) fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> String) -> String {
     match presence {
         Presence::Number => digits(x, 4),
         Presence::Length | Presence::Position => {

@@ -4,8 +4,12 @@ mod check;
 mod envelope;
 pub mod materials;
 mod sections;
+mod sweep;
+mod sweep_chart;
 mod verdict;
 mod waists;
 
 pub use check::describe as check;
 pub use envelope::describe as envelope;
+pub use sweep::describe as sweep;
+pub use sweep_chart::describe as sweep_chart;

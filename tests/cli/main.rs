@@ -5,6 +5,7 @@ mod manual;
 mod materials;
 mod new;
 mod schema;
+mod sweep;
 
 use std::io::Write;
 use std::process::{Command, Output, Stdio};

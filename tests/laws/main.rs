@@ -9,6 +9,7 @@ mod ranges;
 mod second_road;
 mod second_type;
 mod spec;
+mod swept;
 mod trace3d;
 
 use proptest::test_runner::{Config, RngSeed};

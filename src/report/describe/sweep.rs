@@ -74,7 +74,11 @@ pub(super) fn name_along(varied: &Varied) -> String {
 
 /// A value as kept, with its unit.
 pub(super) fn told(kept: f64, kind: Kind) -> String {
+    // Wavelengths are called by their nanometres.
+    const WAVELENGTHS: f64 = 2e-6;
     match kind {
+        Kind::Length if kept > 0.0 && kept < WAVELENGTHS => human(kept, kind, 5),
+        Kind::Radius if kept < -1e-9 => format!("{} convex", value(-kept, kind)),
         Kind::Length
         | Kind::Radius
         | Kind::Face

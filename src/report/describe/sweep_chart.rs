@@ -7,7 +7,7 @@ use crate::report::chart::{
     Across, Chart, Contour, Curve, Layer, Map, Meaning, Panel, Range, Reference,
 };
 use crate::report::figure::{Axis, Mark, Stroke, Ticks};
-use crate::report::number::Scale;
+use crate::report::number::{Scale, plain};
 use crate::study::sweep::{Column, Sweep, Varied, Where};
 
 /// A radius that grows without bound at an edge leaves the frame at this multiple of the value
@@ -42,7 +42,7 @@ pub fn describe(sweep: &Sweep) -> Chart {
         .collect();
     let mut particulars = vec![
         format!("{} cavity", sweep.form),
-        told(sweep.wavelength_m, Kind::Length),
+        format!("{} nm", plain(sweep.wavelength_m * 1e9, 6)),
     ];
     particulars.extend(now);
     let groups = groups(sweep);
@@ -190,7 +190,7 @@ fn label(at: f64, meaning: Meaning, presence: Presence) -> String {
         Meaning::AtLeast => "at least",
         _ => "at most",
     };
-    let value = super::check::measured(at, presence, crate::report::number::plain);
+    let value = super::check::measured(at, presence, plain);
     format!("limit: {word} {value}")
 }
 
@@ -202,7 +202,20 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
         .iter()
         .flat_map(|column| limits_on(sweep, column))
         .collect();
-    let ends = ends(&columns, None, &limits);
+    let mut ends = ends(&columns, None, &limits);
+    // A peak between two points is in the frame too.
+    for (name, ..) in &group.columns {
+        let both = sweep
+            .extremes
+            .get(name)
+            .map(|both| [&both.least, &both.greatest]);
+        let inside = (both.into_iter().flatten())
+            .filter(|extreme| extreme.location == Where::Inside)
+            .filter_map(|extreme| extreme.value);
+        for value in inside {
+            ends = ends.map(|[from, to]| [from.min(value), to.max(value)]);
+        }
+    }
     let title = match presence {
         Presence::Length if is_radius(columns[0]) => "beam radius",
         _ => group.heading.as_str(),
@@ -236,8 +249,7 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
         }
     }
     for ((name, plane, column), stroke) in group.columns.iter().zip(Stroke::ALL) {
-        let points = (varied.kept.iter().zip(&column.values))
-            .map(|(kept, value)| (varied.shown(*kept), *value));
+        let points = points(sweep, varied, name, column);
         let text = if group.columns.len() > 1 { plane } else { "" };
         layers.push(Layer::Curve(Curve::through(text, stroke, points)));
         layers.extend(marks(sweep, varied, name, column, stroke, &y));
@@ -248,6 +260,19 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
         y: Some(y),
         layers,
     }
+}
+
+/// The points of a curve in order, those towards the edges among them.
+fn points(sweep: &Sweep, varied: &Varied, name: &str, column: &Column) -> Vec<(f64, Option<f64>)> {
+    let near = &sweep.near_edges;
+    let index = sweep.measures.0.iter().position(|(known, _)| known == name);
+    let more = index.and_then(|index| near.values.get(index));
+    let mut points: Vec<(f64, Option<f64>)> = (varied.kept.iter().zip(&column.values))
+        .chain(near.kept.iter().zip(more.into_iter().flatten()))
+        .map(|(kept, value)| (varied.shown(*kept), *value))
+        .collect();
+    points.sort_by(|a, b| a.0.total_cmp(&b.0));
+    points
 }
 
 fn heading(group: &Group<'_>) -> String {
@@ -345,7 +370,13 @@ fn map(sweep: &Sweep, [x, y]: [&Varied; 2], name: &str, column: &Column) -> Pane
         layers: vec![Layer::Map(Map {
             columns,
             values,
-            scale: Axis::of(title, ends.into_iter().flatten(), scales_of(presence)),
+            scale: match ends {
+                // Every colour is worth having.
+                Some([from, to]) if from < to => {
+                    Axis::between(title, from, to, scales_of(presence))
+                }
+                _ => Axis::of(title, ends.into_iter().flatten(), scales_of(presence)),
+            },
             absent: if sweep.stable.iter().all(|stable| *stable) {
                 "no value"
             } else {

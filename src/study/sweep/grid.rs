@@ -2,7 +2,6 @@
 
 use rayon::prelude::*;
 
-use super::Varied;
 use crate::cavity::{Cavity, Measure, Slot};
 use crate::numeric::LANES;
 use crate::study::batch::{Batch, CHUNK};
@@ -21,10 +20,11 @@ struct Part<'a> {
     stable: &'a mut [bool],
 }
 
-pub(super) fn evaluate(cavity: &Cavity, measures: &[Measure], varied: &[Varied]) -> Found {
-    let slots: Vec<Slot> = varied.iter().map(|one| one.slot).collect();
+/// Evaluates measures over the values of one or two quantities.
+pub(super) fn evaluate(cavity: &Cavity, measures: &[Measure], varied: &[(Slot, &[f64])]) -> Found {
+    let slots: Vec<Slot> = varied.iter().map(|(slot, _)| *slot).collect();
     let batch = Batch::new(cavity, measures.to_vec(), slots);
-    let counts: Vec<usize> = varied.iter().map(|one| one.kept.len()).collect();
+    let counts: Vec<usize> = varied.iter().map(|(_, kept)| kept.len()).collect();
     let points: usize = counts.iter().product();
     let mut found = Found {
         values: vec![vec![None; points]; measures.len()],
@@ -57,9 +57,9 @@ pub(super) fn evaluate(cavity: &Cavity, measures: &[Measure], varied: &[Varied])
                     [_, inner] => [point / inner, point % inner],
                     _ => [point, 0],
                 };
-                chunk.inputs[block * inputs].0[lane] = varied[0].kept[outer];
-                if let Some(second) = varied.get(1) {
-                    chunk.inputs[block * inputs + 1].0[lane] = second.kept[inner];
+                chunk.inputs[block * inputs].0[lane] = varied[0].1[outer];
+                if let Some((_, second)) = varied.get(1) {
+                    chunk.inputs[block * inputs + 1].0[lane] = second[inner];
                 }
             }
             batch.evaluate(chunk, blocks);

@@ -14,11 +14,12 @@ use std::fmt;
 
 pub use even::Even;
 pub use result::{
-    Column, Extreme, Extremes, Named, Place, StableRange, Stationary, Sweep, Varied, Where,
+    Column, Extreme, Extremes, Named, NearEdges, Place, StableRange, Stationary, Sweep, Varied,
+    Where,
 };
 
-use crate::analysis::measures::{Evaluator, Workspace, why_none};
-use crate::analysis::ranges::stable_within;
+use crate::analysis::measures::why_none;
+use crate::analysis::ranges::{Range, stable_within};
 use crate::cavity::{Cavity, Measure, Origin, Slot};
 use crate::optics::Plane;
 
@@ -30,6 +31,11 @@ pub const POINTS_OF_TWO: usize = 101;
 pub const MOST_POINTS: usize = 1_000_000;
 /// Most values in all: points times measures.
 pub const MOST_VALUES: usize = 10_000_000;
+
+/// Points that lead a curve towards an edge.
+const TOWARDS_EDGE: usize = 16;
+/// More ranges than these cannot be told apart in a picture.
+const RANGES_DRAWN: usize = 60;
 
 /// A quantity and how far it is swept.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -143,27 +149,26 @@ pub fn sweep(cavity: &Cavity, options: &Options) -> Result<Sweep, SweepError> {
 
 /// Whether rays or any of the measures differ between a few places of the range.
 fn moves_anything(cavity: &Cavity, vary: &Vary, measures: &[(String, Measure)]) -> bool {
-    let measures = measures.iter().map(|(_, measure)| *measure).collect();
-    let evaluator = Evaluator::new(cavity, measures);
-    let mut workspace = Workspace::default();
+    let places = [0.0, 0.19, 0.5, 0.73, 1.0];
+    let kept = places.map(|share| vary.from + (vary.to - vary.from) * share);
+    let measures: Vec<Measure> = measures.iter().map(|(_, measure)| *measure).collect();
+    let seen = grid::evaluate(cavity, &measures, &[(vary.slot, &kept)]);
+    let differ = |values: &Vec<Option<f64>>| values.iter().any(|value| *value != values[0]);
+    if seen.values.iter().any(differ) {
+        return true;
+    }
     let mut values = cavity.book().nominal();
-    let mut first = None;
-    [0.0, 0.19, 0.5, 0.73, 1.0].into_iter().any(|share| {
-        values[vary.slot.index()] = vary.from + (vary.to - vary.from) * share;
+    let mut ways = kept.iter().map(|kept| {
+        values[vary.slot.index()] = *kept;
         cavity.book().follow_ties(&mut values);
-        let way = evaluator.one_way(&values, &mut workspace);
-        let mut seen: Vec<Option<u64>> = Plane::BOTH
-            .into_iter()
-            .flat_map(|plane| {
-                let m = way[plane];
-                [m.a, m.b, m.c, m.d].map(|x| Some(x.to_bits()))
-            })
-            .collect();
-        evaluator.evaluate(&values, &mut workspace, |_, value: f64, exists| {
-            seen.push(exists.then_some(value.to_bits()));
-        });
-        *first.get_or_insert_with(|| seen.clone()) != seen
-    })
+        let way = cavity.one_way(&values);
+        Plane::BOTH.map(|plane| {
+            let m = way[plane];
+            [m.a, m.b, m.c, m.d].map(f64::to_bits)
+        })
+    });
+    let first = ways.next();
+    ways.any(|way| Some(way) != first)
 }
 
 fn swept(cavity: &Cavity, options: &Options, along: usize) -> Sweep {
@@ -173,7 +178,8 @@ fn swept(cavity: &Cavity, options: &Options, along: usize) -> Sweep {
         .map(|vary| Varied::new(cavity, vary, along))
         .collect();
     let measures: Vec<Measure> = options.measures.iter().map(|(_, m)| *m).collect();
-    let found = grid::evaluate(cavity, &measures, &varied);
+    let axes: Vec<(Slot, &[f64])> = varied.iter().map(|one| (one.slot, &one.kept[..])).collect();
+    let found = grid::evaluate(cavity, &measures, &axes);
     let mut cautions: Vec<String> = cavity.cautions().to_vec();
     cautions.extend(varied.iter().filter_map(Varied::caution));
     let inner = (varied.len() == 2).then_some(along);
@@ -211,6 +217,7 @@ fn swept(cavity: &Cavity, options: &Options, along: usize) -> Sweep {
         cautions,
         limits: cavity.limits.clone(),
         stable: found.stable,
+        near_edges: NearEdges::default(),
     };
     match options.vary[..] {
         [one] => along_one(cavity, one, &mut sweep),
@@ -270,6 +277,44 @@ fn along_one(cavity: &Cavity, vary: Vary, sweep: &mut Sweep) {
             .collect(),
     );
     sweep.stationary = Some(stationary);
+    sweep.near_edges = near_edges(cavity, &sweep.measures, varied, &within.ranges);
+}
+
+/// Points towards every edge of stability, closer than those of the grid: there a beam grows or
+/// shrinks without bound, and the grid ends short of it.
+fn near_edges(
+    cavity: &Cavity,
+    measures: &Named<Column>,
+    varied: &Varied,
+    ranges: &[Range],
+) -> NearEdges {
+    let steps = varied.kept.windows(2).map(|pair| (pair[1] - pair[0]).abs());
+    let step = steps.fold(0.0, f64::max);
+    let mut kept = Vec::new();
+    for range in ranges.iter().take(RANGES_DRAWN) {
+        let [a, b] = [range.from.value(), range.to.value()];
+        let half = match (a, b) {
+            (Some(a), Some(b)) => 0.5 * (b - a),
+            _ => step,
+        };
+        for (edge, inwards) in [(a, 1.0), (b, -1.0)] {
+            let Some(edge) = edge else { continue };
+            kept.extend((0..=TOWARDS_EDGE).map(|k| {
+                let share = k as f64 / TOWARDS_EDGE as f64;
+                edge + inwards * half.min(step) * share.powi(3)
+            }));
+        }
+    }
+    if kept.is_empty() {
+        return NearEdges::default();
+    }
+    let measures: Vec<Measure> = measures
+        .0
+        .iter()
+        .map(|(_, column)| column.measure)
+        .collect();
+    let values = grid::evaluate(cavity, &measures, &[(varied.slot, &kept)]).values;
+    NearEdges { kept, values }
 }
 
 /// The extremes among the stable points of a map.

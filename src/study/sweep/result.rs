@@ -62,6 +62,18 @@ pub struct Sweep {
     /// Whether both planes hold a mode, at each point.
     #[serde(skip)]
     pub stable: Vec<bool>,
+    /// More points towards the edges of stability, for pictures.
+    #[serde(skip)]
+    pub near_edges: NearEdges,
+}
+
+/// Points of a sweep of one quantity that are not on its grid.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct NearEdges {
+    /// The quantity's values as kept, in no order.
+    pub kept: Vec<f64>,
+    /// The values there of each measure.
+    pub values: Vec<Vec<Option<f64>>>,
 }
 
 /// A quantity and its values.

@@ -85,7 +85,7 @@ fn json_has_a_value_for_every_point_or_says_why_not() {
     let point = &swept["stationary"][0];
     assert_eq!(
         (&point["measure"], &point["kind"]),
-        (&"X1.spot".into(), &"maximum".into())
+        (&"X1.spot".into(), &"minimum".into())
     );
 }
 

@@ -37,7 +37,8 @@ fn hold(found: &Sweep) {
     let margins = &found.measures.get("margin").unwrap().values;
     let span = (varied.kept[0] - varied.kept[varied.kept.len() - 1]).abs();
     for (x, margin) in varied.kept.iter().zip(margins) {
-        let margin = margin.unwrap();
+        // A lens spread over no thickness at all has no margin.
+        let Some(margin) = *margin else { continue };
         let near = 1e-9 * span;
         let is_within = |room: f64| {
             let holds = |ends: [f64; 2]| ends[0] - room <= *x && *x <= ends[1] + room;

@@ -123,6 +123,6 @@ fn two_zones_of_a_thermal_lens() {
     )
     .unwrap()
     .cavity;
-    let found = swept(&cavity, "X.thermal", 0.0, 12.0, "X.spot");
+    let found = swept(&cavity, "X.thermal", -3.0, 12.0, "X.spot");
     hold(&found, [(0.18, -1.0 / 0.6), (0.5, 1.0 / 0.9)], "X.spot");
 }

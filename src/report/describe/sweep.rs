@@ -8,12 +8,15 @@ use crate::report::document::{Block, Document, Table, Tone};
 use crate::report::number::{
     FREQUENCIES, LENGTHS, NUMBERS, POWERS, RATIOS, Scale, common, plain, significant,
 };
-use crate::study::sweep::{Even, Extreme, Place, StableRange, Sweep, Varied, Where};
+use crate::study::sweep::{Column, Even, Place, StableRange, Sweep, Varied, Where};
 
 /// Rows of the curves that are printed.
 const ROWS: usize = 15;
-/// Measures that fit beside each other on a line.
-const COLUMNS: usize = 5;
+/// The least width of a column of numbers, and the space about it.
+const NUMBER: usize = 10;
+const SPACE: usize = 2;
+/// Columns of the terminal.
+const WIDTH: usize = 80;
 /// Ranges that a verdict names one by one.
 const NAMED: usize = 3;
 /// Rows of a table at the most; a picture shows more.
@@ -285,14 +288,19 @@ fn extremes(document: &mut Document, sweep: &Sweep) {
     } else {
         "Extremes among the stable points"
     });
-    let mut table = Table::new(&["<measure", "least", "<at", "greatest", "<at"]);
+    let mut table = Table::new(&["<measure", "<", "value", "<at"]);
     let mut approached = false;
     for (name, both) in &sweep.extremes.0 {
         let Some(column) = sweep.measures.get(name) else {
             continue;
         };
         let presence = column.measure.presence();
-        let mut cells = |extreme: &Extreme| {
+        let same = both.least.value.is_some() && both.least.value == both.greatest.value;
+        let rows = [
+            (name.as_str(), "least", &both.least),
+            ("", "greatest", &both.greatest),
+        ];
+        for (name, which, extreme) in rows.into_iter().take(if same { 1 } else { 2 }) {
             let value = match extreme.value {
                 Some(value) => number(value, presence),
                 None => {
@@ -305,12 +313,15 @@ fn extremes(document: &mut Document, sweep: &Sweep) {
                 Where::End => " (end)",
                 Where::Inside | Where::Point => "",
             };
-            [value, format!("{}{edge}", at(extreme.place, sweep))]
-        };
-        let mut row = vec![name.clone()];
-        row.extend(cells(&both.least));
-        row.extend(cells(&both.greatest));
-        table.rows.push(row);
+            let (which, place) = if same {
+                ("the same", "everywhere".into())
+            } else {
+                (which, format!("{}{edge}", at(extreme.place, sweep)))
+            };
+            table
+                .rows
+                .push(vec![name.into(), which.into(), value, place]);
+        }
     }
     document.push(Block::Table(table));
     if approached {
@@ -342,11 +353,39 @@ fn stationary(document: &mut Document, sweep: &Sweep, varied: &Varied) {
     }
 }
 
+/// A measure's name with its plane on a second line.
+fn in_lines(name: &str) -> String {
+    name.replace(".tangential", "\ntangential")
+        .replace(".sagittal", "\nsagittal")
+}
+
+/// The measures that fit beside each other, the first one in any case.
+fn fitting<'s>(sweep: &'s Sweep, varied: &Varied) -> Vec<&'s (String, Column)> {
+    let mut width = name_along(varied).chars().count().max(NUMBER) + SPACE + 1;
+    let mut columns = Vec::new();
+    for column in &sweep.measures.0 {
+        // A unit may stand behind the plane.
+        let unit = ", GHz".len();
+        let lines = in_lines(&column.0);
+        let widths = lines.lines().enumerate().map(|(index, line)| {
+            let behind = if index > 0 { unit } else { 0 };
+            line.chars().count() + behind
+        });
+        let title = widths.max().unwrap_or(0);
+        width += title.max(NUMBER) + SPACE;
+        if width > WIDTH && !columns.is_empty() {
+            break;
+        }
+        columns.push(column);
+    }
+    columns
+}
+
 fn curves(document: &mut Document, sweep: &Sweep, varied: &Varied) {
     document.heading("Along the way");
     let shown: Vec<f64> = varied.kept.iter().map(|kept| varied.shown(*kept)).collect();
     let unit = common(shown.iter().copied(), scales_along(varied), 1.0);
-    let columns: Vec<_> = sweep.measures.0.iter().take(COLUMNS).collect();
+    let columns = fitting(sweep, varied);
     let scales: Vec<Scale> = columns
         .iter()
         .map(|(_, column)| match column.measure.presence() {
@@ -359,9 +398,7 @@ fn curves(document: &mut Document, sweep: &Sweep, varied: &Varied) {
         .collect();
     let mut titles = vec![format!("{}\n{}", name_along(varied), unit.symbol)];
     titles.extend(columns.iter().zip(&scales).map(|((name, _), scale)| {
-        let name = name
-            .replace(".tangential", "\ntangential")
-            .replace(".sagittal", "\nsagittal");
+        let name = in_lines(name);
         if name.contains('\n') && !scale.symbol.is_empty() {
             format!("{name}, {}", scale.symbol)
         } else {
@@ -381,8 +418,8 @@ fn curves(document: &mut Document, sweep: &Sweep, varied: &Varied) {
         table.rows.push(cells);
     }
     document.push(Block::Table(table));
-    if sweep.measures.0.len() > COLUMNS {
-        let names: Vec<&str> = (sweep.measures.0.iter().skip(COLUMNS))
+    if sweep.measures.0.len() > columns.len() {
+        let names: Vec<&str> = (sweep.measures.0.iter().skip(columns.len()))
             .map(|(name, _)| name.as_str())
             .collect();
         document.aside(format!("not shown here: {}", names.join(", ")));

@@ -1,7 +1,7 @@
 //! A sweep as a picture: curves over one quantity, maps over two.
 
 use super::sweep::{name_along, number, scales_along, scales_of, told, verdict};
-use crate::cavity::{Bounds, Limit, Presence};
+use crate::cavity::{Bounds, Limit, Measure, Presence};
 use crate::quantity::Kind;
 use crate::report::chart::{
     Across, Chart, Contour, Curve, Layer, Map, Meaning, Panel, Range, Reference,
@@ -17,6 +17,8 @@ const BEYOND_MOST: f64 = 1.8;
 const MOST: f64 = 0.9;
 /// An axis reaches for a limit as far as this multiple of what the curves need.
 const REACH_FOR_LIMIT: f64 = 1.6;
+/// Room above two curves, as a share of their height.
+const ROOM_FOR_TWO: f64 = 0.3;
 /// More marks than this in a panel have no labels.
 const LABELLED: usize = 8;
 
@@ -76,11 +78,15 @@ pub fn describe(sweep: &Sweep) -> Chart {
 }
 
 fn is_radius(column: &Column) -> bool {
-    use crate::cavity::Measure;
     matches!(
         column.measure,
         Measure::Spot(..) | Measure::Least(..) | Measure::Waist(..)
     )
+}
+
+/// Whether a measure turns so seldom that its marks lie on the drawn curve.
+fn is_smooth(column: &Column) -> bool {
+    !matches!(column.measure, Measure::ModeClearance { .. })
 }
 
 /// Measures that have no value anywhere.
@@ -204,7 +210,7 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
         .collect();
     let mut ends = ends(&columns, None, &limits);
     // A peak between two points is in the frame too.
-    for (name, ..) in &group.columns {
+    for (name, ..) in group.columns.iter().filter(|(_, _, c)| is_smooth(c)) {
         let both = sweep
             .extremes
             .get(name)
@@ -215,6 +221,10 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
         for value in inside {
             ends = ends.map(|[from, to]| [from.min(value), to.max(value)]);
         }
+    }
+    if group.columns.len() > 1 {
+        // Two curves leave little room for what is written at their marks.
+        ends = ends.map(|[from, to]| [from, to + ROOM_FOR_TWO * (to - from)]);
     }
     let title = match presence {
         Presence::Length if is_radius(columns[0]) => "beam radius",
@@ -252,7 +262,9 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
         let points = points(sweep, varied, name, column);
         let text = if group.columns.len() > 1 { plane } else { "" };
         layers.push(Layer::Curve(Curve::through(text, stroke, points)));
-        layers.extend(marks(sweep, varied, name, column, stroke, &y));
+        if is_smooth(column) {
+            layers.extend(marks(sweep, varied, name, column, stroke, &y));
+        }
     }
     Panel {
         heading: heading(group),
@@ -266,7 +278,9 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
 fn points(sweep: &Sweep, varied: &Varied, name: &str, column: &Column) -> Vec<(f64, Option<f64>)> {
     let near = &sweep.near_edges;
     let index = sweep.measures.0.iter().position(|(known, _)| known == name);
-    let more = index.and_then(|index| near.values.get(index));
+    let more = index
+        .filter(|_| is_smooth(column))
+        .and_then(|index| near.values.get(index));
     let mut points: Vec<(f64, Option<f64>)> = (varied.kept.iter().zip(&column.values))
         .chain(near.kept.iter().zip(more.into_iter().flatten()))
         .map(|(kept, value)| (varied.shown(*kept), *value))

@@ -237,6 +237,19 @@ fn along_one(cavity: &Cavity, vary: Vary, sweep: &mut Sweep) {
                 .into(),
         );
     }
+    let is_restless = |m: &Measure| matches!(m, Measure::ModeClearance { .. });
+    if sweep
+        .measures
+        .0
+        .iter()
+        .any(|(_, column)| is_restless(&column.measure))
+    {
+        sweep.cautions.push(
+            "the mode clearance turns at every coincidence of modes: its extremes are those of \
+             the places looked at, not of all"
+                .into(),
+        );
+    }
     let varied = &sweep.vary[0];
     let place = |kept: f64| Place::of(varied, kept);
     let searched = (from, within.searched_to);

@@ -79,6 +79,15 @@ impl Entry {
         (by * per_metre + 1.0).recip() * self.value
     }
 
+    /// What its spread is measured in: of a radius that is flat, curvatures.
+    pub fn spread_kind(&self) -> Kind {
+        if self.is_reciprocal() && self.value == 0.0 {
+            Kind::Curvature
+        } else {
+            self.kind
+        }
+    }
+
     /// The least and the greatest value kept between its limits; none without limits.
     ///
     /// Of a radius these are curvatures in 1/m, so that its lower limit makes the greatest.

@@ -10,8 +10,10 @@ mod materials;
 mod new;
 mod output;
 mod picture;
+mod progress;
 mod schema;
 mod sweep;
+mod tolerance;
 mod vary;
 
 use std::ffi::OsString;
@@ -36,17 +38,8 @@ const WRONG_INPUT: u8 = 2;
 const FAULT: u8 = 3;
 
 /// Commands that are named but cannot be given yet.
-const LATER: [&str; 11] = [
-    "modes",
-    "response",
-    "couple",
-    "fit-beam",
-    "tolerance",
-    "tilt",
-    "losses",
-    "design",
-    "layout",
-    "report",
+const LATER: [&str; 10] = [
+    "modes", "response", "couple", "fit-beam", "tilt", "losses", "design", "layout", "report",
     "live",
 ];
 
@@ -75,6 +68,8 @@ enum Command {
     Check(check::Typed),
     /// Any measure against one or two quantities; all ranges of stability, edges solved
     Sweep(sweep::Typed),
+    /// Will the build still meet its limits with real parts, and what spoils it?
+    Tolerance(tolerance::Typed),
     /// Which materials are known, with their sources, and what is their index at a wavelength?
     Materials(materials::Typed),
     /// Print or write a cavity file to start from
@@ -159,6 +154,7 @@ pub fn run() -> ExitCode {
     let answer = catch_unwind(|| match &typed.command {
         Command::Check(typed) => check::run(typed),
         Command::Sweep(typed) => sweep::run(typed),
+        Command::Tolerance(typed) => tolerance::run(typed),
         Command::Materials(typed) => materials::run(typed),
         Command::New(typed) => new::run(typed),
         Command::Schema(_) => schema::run(),

@@ -29,9 +29,9 @@ pub(super) fn write_whole(path: &Path, bytes: &[u8]) -> std::io::Result<()> {
     Ok(())
 }
 
-/// Writes a table, or says why it cannot be written.
-pub(super) fn write_table(path: &Path, table: &[u8]) -> Result<(), Answer> {
-    write_whole(path, table).map_err(|error| {
+/// Writes a table, or says why that cannot be done.
+pub(super) fn write_table(path: &Path, bytes: &[u8]) -> Result<(), Answer> {
+    write_whole(path, bytes).map_err(|error| {
         let path = path.display().to_string();
         Answer::wrong(format!(
             "error: cannot write the table {}: {error}\n",

@@ -5,7 +5,7 @@
 //! on that width: results are the same bytes everywhere.
 
 use std::f64::consts::{FRAC_PI_2, PI};
-use std::ops::{Add, BitAnd, Div, Mul, Neg, Sub};
+use std::ops::{Add, BitAnd, BitOr, Div, Mul, Neg, Not, Sub};
 
 use super::Real;
 
@@ -27,6 +27,34 @@ impl LaneMask {
     #[inline(always)]
     pub fn holds(self, lane: usize) -> bool {
         self.0[lane] != 0
+    }
+
+    /// Flags of the first lanes.
+    #[inline(always)]
+    pub fn first(count: usize) -> Self {
+        LaneMask(each(|i| if i < count { u64::MAX } else { 0 }))
+    }
+
+    /// How many flags hold.
+    #[inline(always)]
+    pub fn count(self) -> usize {
+        self.0.iter().map(|flag| (flag & 1) as usize).sum()
+    }
+}
+
+impl BitOr for LaneMask {
+    type Output = Self;
+    #[inline(always)]
+    fn bitor(self, other: Self) -> Self {
+        LaneMask(each(|i| self.0[i] | other.0[i]))
+    }
+}
+
+impl Not for LaneMask {
+    type Output = Self;
+    #[inline(always)]
+    fn not(self) -> Self {
+        LaneMask(each(|i| !self.0[i]))
     }
 }
 
@@ -75,6 +103,19 @@ impl Lanes {
         } else {
             self.map(f)
         }
+    }
+
+    /// The sum of all lanes, in a fixed order.
+    #[inline(always)]
+    pub fn sum(self) -> f64 {
+        let [a, b, c, d, e, f, g, h] = self.0;
+        ((a + e) + (b + f)) + ((c + g) + (d + h))
+    }
+
+    /// The least of all lanes.
+    #[inline(always)]
+    pub fn least(self) -> f64 {
+        self.0.into_iter().fold(f64::INFINITY, f64::min)
     }
 
     #[inline(always)]

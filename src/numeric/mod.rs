@@ -4,6 +4,7 @@ mod dual;
 mod lanes;
 mod real;
 pub mod roots;
+pub mod statistics;
 
 pub use dual::Dual;
 pub use lanes::{LANES, LaneMask, Lanes};

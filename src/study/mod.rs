@@ -2,3 +2,4 @@
 
 pub mod batch;
 pub mod sweep;
+pub mod tolerance;

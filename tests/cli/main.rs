@@ -6,6 +6,7 @@ mod materials;
 mod new;
 mod schema;
 mod sweep;
+mod tolerance;
 
 use std::io::Write;
 use std::process::{Command, Output, Stdio};
@@ -77,6 +78,7 @@ fn every_help_fits_80_columns_and_shows_an_example() {
         "check",
         "sweep",
         "materials",
+        "tolerance",
         "new",
         "schema",
         "completions",

@@ -10,6 +10,7 @@ mod second_road;
 mod second_type;
 mod spec;
 mod swept;
+mod tolerance;
 mod trace3d;
 
 use proptest::test_runner::{Config, RngSeed};

@@ -3,6 +3,8 @@
 //! recalled ("from memory") or computed independently from a published problem ("recomputed").
 
 mod indices;
+mod ishigami;
+mod jcgm_101;
 mod kids_1972;
 mod kogelnik_li;
 mod lens_like_media;

@@ -166,7 +166,7 @@ impl<'a, T: Real> Reading<'a, T> {
     }
 
     /// Distance of the waist from a part's start, in its medium.
-    #[inline(always)]
+    #[inline(never)]
     fn waist_at(&self, part: usize, plane: Plane) -> T {
         let index = match self.stretch(part, 0, plane) {
             Some((stretch, _)) => stretch.index,
@@ -200,6 +200,7 @@ impl<'a, T: Real> Reading<'a, T> {
     }
 
     /// The Gouy phase gathered along the whole way.
+    #[inline(never)]
     fn gouy(&self, plane: Plane) -> T {
         let mut beam = self.modes[plane].beam;
         let mut sum = T::constant(0.0);
@@ -221,6 +222,7 @@ impl<'a, T: Real> Reading<'a, T> {
 
     /// Way from one part's start to another's. In a ring the way to an earlier part leads on past
     /// the first one; a standing cavity is walked back along the same way.
+    #[inline(never)]
     fn distance(&self, from: usize, to: usize) -> T {
         let at = |part: usize| self.cavity.way_to(part, self.values);
         let way = at(to) - at(from);
@@ -232,6 +234,7 @@ impl<'a, T: Real> Reading<'a, T> {
         T::select(backward, around, way)
     }
 
+    #[inline(never)]
     fn lengths(&self) -> RoundTripLengths<T> {
         RoundTripLengths::of(self.cavity, self.values)
     }
@@ -240,8 +243,13 @@ impl<'a, T: Real> Reading<'a, T> {
     fn finesse(&self) -> (T, T::Mask) {
         match self.evaluator.finesse {
             Some((finesse, exists)) => (T::constant(finesse), T::always(exists)),
-            None => airy::finesse(airy::round_trip_attenuation(self.cavity, self.values)),
+            None => self.varied_finesse(),
         }
+    }
+
+    #[inline(never)]
+    fn varied_finesse(&self) -> (T, T::Mask) {
+        airy::finesse(airy::round_trip_attenuation(self.cavity, self.values))
     }
 
     #[inline(always)]

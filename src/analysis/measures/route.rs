@@ -215,21 +215,36 @@ impl Route {
                     share,
                     inside,
                 } => {
-                    let mut inside = inside.map(|number| &mut workspace.inside[number]);
-                    if let Some(inside) = &mut inside {
-                        **inside = Inside::at_start(product);
-                    }
-                    cavity.walk_part(*index, *share, values, &mut |leg| {
-                        if let Some(inside) = &mut inside {
-                            inside.note(&leg, product);
-                        }
-                        product = leg.after(product);
-                    });
+                    let inside = inside.map(|number| &mut workspace.inside[number]);
+                    product = walk_anew(cavity, *index, *share, values, product, inside);
                 }
             }
         }
         product
     }
+}
+
+/// Walks one part. A call of its own: what is inlined is compiled for every set of instructions.
+#[inline(never)]
+fn walk_anew<T: Real>(
+    cavity: &Cavity,
+    index: usize,
+    share: f64,
+    values: &[T],
+    before: PerPlane<RayMatrix<T>>,
+    mut inside: Option<&mut Inside<T>>,
+) -> PerPlane<RayMatrix<T>> {
+    let mut product = before;
+    if let Some(inside) = &mut inside {
+        **inside = Inside::at_start(before);
+    }
+    cavity.walk_part(index, share, values, &mut |leg| {
+        if let Some(inside) = &mut inside {
+            inside.note(&leg, product);
+        }
+        product = leg.after(product);
+    });
+    product
 }
 
 /// The step of a part of which only a length or powers vary, on which it depends linearly.

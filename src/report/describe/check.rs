@@ -1,9 +1,9 @@
 //! `check` for people: the verdict first, then the beam, then how far everything may move.
 
+use super::measured::{frequency, measured, wanted};
 use crate::analysis::check::{Check, Leaving, LimitCheck, Range, Station, Waist};
 use crate::analysis::eigenmode::EDGE;
 use crate::analysis::ranges::{End, Range as Found};
-use crate::cavity::{Bounds, Presence};
 use crate::optics::Plane;
 use crate::quantity::Kind;
 use crate::report::document::{Block, Document, Table, Tone};
@@ -120,17 +120,6 @@ fn summary(document: &mut Document, check: &Check) {
     document.text(format!(
         "t = tangential, here the {horizontal} plane; s = sagittal"
     ));
-}
-
-fn frequency(hertz: f64) -> String {
-    let (size, unit) = match hertz {
-        f if f >= 1e12 => (1e12, "THz"),
-        f if f >= 1e9 => (1e9, "GHz"),
-        f if f >= 1e6 => (1e6, "MHz"),
-        f if f >= 1e3 => (1e3, "kHz"),
-        _ => (1.0, "Hz"),
-    };
-    format!("{} {unit}", significant(hertz / size, 6))
 }
 
 /// "t / s", or one number where both print alike.
@@ -547,15 +536,7 @@ fn limits(document: &mut Document, limits: &[LimitCheck]) {
     let mut table = Table::new(&["<", "<measure", "value", "<wanted"]);
     for check in limits {
         let presence = check.limit.measure.presence();
-        let wanted = match check.limit.bounds {
-            Bounds::Above(low) => format!("above {}", measured(low, presence, plain)),
-            Bounds::Below(high) => format!("below {}", measured(high, presence, plain)),
-            Bounds::Between(low, high) => format!(
-                "{} to {}",
-                measured(low, presence, plain),
-                measured(high, presence, plain)
-            ),
-        };
+        let wanted = wanted(check.limit.bounds, presence);
         table.rows.push(vec![
             if check.holds { "holds" } else { "FAILS" }.into(),
             check.of.clone(),
@@ -566,17 +547,4 @@ fn limits(document: &mut Document, limits: &[LimitCheck]) {
         ]);
     }
     document.push(Block::Table(table));
-}
-
-/// The number of a measure with its unit.
-pub(super) fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> String) -> String {
-    match presence {
-        Presence::Number => digits(x, 4),
-        Presence::Length | Presence::Position => {
-            let scale = common([x], &LENGTHS, 1.0);
-            format!("{} {}", digits(x / scale.size, 4), scale.symbol)
-        }
-        Presence::Angle => format!("{} rad", digits(x, 4)),
-        Presence::Frequency => frequency(x),
-    }
 }

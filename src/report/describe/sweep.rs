@@ -1,7 +1,8 @@
 //! `sweep` for people: from where to where it is stable, what stands out, and a few rows of the
 //! curves.
 
-use super::check::{measured, value};
+use super::check::value;
+use super::measured::measured;
 use crate::cavity::Presence;
 use crate::quantity::{Kind, human};
 use crate::report::document::{Block, Document, Table, Tone};

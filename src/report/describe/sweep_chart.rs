@@ -196,7 +196,7 @@ fn label(at: f64, meaning: Meaning, presence: Presence) -> String {
         Meaning::AtLeast => "at least",
         _ => "at most",
     };
-    let value = super::check::measured(at, presence, plain);
+    let value = super::measured::measured(at, presence, plain);
     format!("limit: {word} {value}")
 }
 

@@ -4,6 +4,7 @@ use crate::analysis::check::{Check, Spot};
 use crate::cavity::Presence;
 use crate::quantity::Kind;
 use crate::study::sweep::{Even, Sweep, Varied};
+use crate::study::tolerance::Tolerance;
 
 const STATIONS: [&str; 12] = [
     "part",
@@ -19,6 +20,20 @@ const STATIONS: [&str; 12] = [
     "sagittal_footprint_m",
     "clip_loss",
 ];
+
+/// The contributions of a tolerance study, one line a measure and quantity.
+///
+/// # Errors
+/// None that a table in memory can cause; the writer's own are passed on.
+pub fn contributions(found: &Tolerance) -> Result<Vec<u8>, csv::Error> {
+    let mut table = csv::Writer::from_writer(Vec::new());
+    for contribution in &found.contributions {
+        table.serialize(contribution)?;
+    }
+    table
+        .into_inner()
+        .map_err(|error| error.into_error().into())
+}
 
 /// The stations of a check; a value that does not exist is an empty field.
 ///

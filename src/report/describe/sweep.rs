@@ -400,10 +400,10 @@ fn curves(document: &mut Document, sweep: &Sweep, varied: &Varied) {
     let mut titles = vec![format!("{}\n{}", name_along(varied), unit.symbol)];
     titles.extend(columns.iter().zip(&scales).map(|((name, _), scale)| {
         let name = in_lines(name);
-        if name.contains('\n') && !scale.symbol.is_empty() {
-            format!("{name}, {}", scale.symbol)
-        } else {
-            format!("{name}\n{}", scale.symbol)
+        match (name.contains('\n'), scale.symbol) {
+            (_, "") => name,
+            (true, unit) => format!("{name}, {unit}"),
+            (false, unit) => format!("{name}\n{unit}"),
         }
     }));
     let titles: Vec<&str> = titles.iter().map(String::as_str).collect();

@@ -157,7 +157,15 @@ fn ends(columns: &[&Column], stable: Option<&[bool]>, limits: &[&Limit]) -> Opti
         .filter_map(|(_, value)| *value)
         .collect();
     values.sort_by(f64::total_cmp);
-    let (least, greatest) = (*values.first()?, *values.last()?);
+    let wanted = limits.iter().flat_map(|limit| bounds(limit));
+    let (Some(least), Some(greatest)) = (values.first(), values.last()) else {
+        // Without any value, what is wanted is shown.
+        let wanted: Vec<f64> = wanted.map(|(at, _)| at).collect();
+        let least = wanted.iter().copied().reduce(f64::min)?;
+        let greatest = wanted.iter().copied().reduce(f64::max)?;
+        return Some([least, greatest]);
+    };
+    let (least, greatest) = (*least, *greatest);
     let of_most = values[((values.len() - 1) as f64 * MOST) as usize];
     let (low, high) = match columns[0].measure.presence() {
         // Deep in instability nobody counts how deep.
@@ -167,7 +175,7 @@ fn ends(columns: &[&Column], stable: Option<&[bool]>, limits: &[&Limit]) -> Opti
     };
     let (mut from, mut to) = (low.min(high), high);
     let room = REACH_FOR_LIMIT * (high - low);
-    for bound in limits.iter().flat_map(|limit| bounds(limit)) {
+    for bound in wanted {
         if bound.0 <= low + room && bound.0 >= high - room {
             from = from.min(bound.0);
             to = to.max(bound.0);

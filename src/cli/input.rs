@@ -8,16 +8,66 @@ use std::path::Path;
 use super::{Answer, CavityFile, WRONG_INPUT};
 use crate::cavity::{Cavity, Measure};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
-use crate::file::{self, LARGEST_FILE, Loaded};
+use crate::file::{self, Changes, LARGEST_FILE, Loaded};
 use crate::quantity::{self, Kind, Spread};
 use crate::report::render;
 
 /// The cavity that was typed, or what is wrong with it.
 pub(super) fn load(typed: &CavityFile) -> Result<Loaded, Answer> {
-    let name = typed.file.display().to_string();
-    let text = read(&typed.file, &name)?;
-    file::load(&name, &text, &typed.set)
-        .map_err(|refused| refuse(&refused.diagnostics, &refused.sources))
+    CavityText::read(typed)?.load(&settings(typed))
+}
+
+/// What was typed behind `--set`.
+pub(super) fn settings(typed: &CavityFile) -> Changes {
+    let none = Changes::new();
+    typed.set.iter().fold(none, |changes, set| changes.set(set))
+}
+
+/// A cavity file's text, to be read more than once.
+pub(super) struct CavityText {
+    name: String,
+    text: String,
+}
+
+impl CavityText {
+    /// The text on disk.
+    pub(super) fn read(typed: &CavityFile) -> Result<CavityText, Answer> {
+        let name = typed.file.display().to_string();
+        let text = read(&typed.file, &name)?;
+        Ok(CavityText { name, text })
+    }
+
+    /// The cavity with some changes.
+    pub(super) fn load(&self, changes: &Changes) -> Result<Loaded, Answer> {
+        file::load_changed(&self.name, &self.text, changes)
+            .map_err(|refused| refuse(&refused.diagnostics, &refused.sources))
+    }
+}
+
+/// What is typed for `--measure`: names of measures, separated by commas.
+pub(super) fn measures(cavity: &Cavity, text: &str) -> Result<Vec<(String, Measure)>, Answer> {
+    let mut measures: Vec<(String, Measure)> = Vec::new();
+    let mut start = 0;
+    for piece in text.split(',') {
+        let name = piece.trim();
+        let from = start + (piece.len() - piece.trim_start().len());
+        let span = from..from + name.len();
+        start += piece.len() + 1;
+        let refuse =
+            |message, help| refuse_argument("--measure", text, span.clone(), message, help);
+        if name.is_empty() {
+            return Err(refuse(
+                "a measure is missing here".into(),
+                Some("write them like --measure margin,X1.spot".into()),
+            ));
+        }
+        let measure = Measure::parse(name, cavity)
+            .map_err(|error| refuse(error.message, Some(error.help)))?;
+        if measures.iter().all(|(_, known)| *known != measure) {
+            measures.push((name.to_string(), measure));
+        }
+    }
+    Ok(measures)
 }
 
 fn refuse(diagnostics: &[Diagnostic], sources: &[Source]) -> Answer {
@@ -61,32 +111,6 @@ pub(super) fn quantity(
             Some(format!("write it like \"{}\"", kind.example())),
         )),
     }
-}
-
-/// Measures typed in one list, with their names.
-pub(super) fn measures(cavity: &Cavity, text: &str) -> Result<Vec<(String, Measure)>, Answer> {
-    let mut at = 0;
-    let mut found = Vec::new();
-    for piece in text.split(',') {
-        let start = at + (piece.len() - piece.trim_start().len());
-        at += piece.len() + 1;
-        let name = piece.trim();
-        let span = start..start + name.len();
-        match Measure::parse(name, cavity) {
-            Ok(measure) => found.push((name.to_string(), measure)),
-            Err(error) => {
-                let help = Some(error.help);
-                return Err(refuse_argument(
-                    "--measure",
-                    text,
-                    span,
-                    error.message,
-                    help,
-                ));
-            }
-        }
-    }
-    Ok(found)
 }
 
 /// What is wrong with the text of an argument.

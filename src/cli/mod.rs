@@ -12,7 +12,9 @@ mod output;
 mod picture;
 mod progress;
 mod schema;
+mod sweep;
 mod tolerance;
+mod vary;
 
 use std::ffi::OsString;
 use std::io::{ErrorKind, Write};
@@ -36,9 +38,9 @@ const WRONG_INPUT: u8 = 2;
 const FAULT: u8 = 3;
 
 /// Commands that are named but cannot be given yet.
-const LATER: [&str; 11] = [
-    "modes", "response", "couple", "fit-beam", "sweep", "tilt", "losses", "design", "layout",
-    "report", "live",
+const LATER: [&str; 10] = [
+    "modes", "response", "couple", "fit-beam", "tilt", "losses", "design", "layout", "report",
+    "live",
 ];
 
 /// Design lasers and optical cavities: is it stable with real parts, how large is the beam on
@@ -64,6 +66,8 @@ enum Colour {
 enum Command {
     /// Is the cavity stable, how far may each part move, how large is the beam everywhere?
     Check(check::Typed),
+    /// Any measure against one or two quantities; all ranges of stability, edges solved
+    Sweep(sweep::Typed),
     /// Will the build still meet its limits with real parts, and what spoils it?
     Tolerance(tolerance::Typed),
     /// Which materials are known, with their sources, and what is their index at a wavelength?
@@ -149,6 +153,7 @@ pub fn run() -> ExitCode {
     };
     let answer = catch_unwind(|| match &typed.command {
         Command::Check(typed) => check::run(typed),
+        Command::Sweep(typed) => sweep::run(typed),
         Command::Tolerance(typed) => tolerance::run(typed),
         Command::Materials(typed) => materials::run(typed),
         Command::New(typed) => new::run(typed),

@@ -21,6 +21,10 @@ pub(super) struct Override {
     pub text: String,
     /// Index of its own source, and where the value lies in it.
     pub place: Place,
+    /// Offset of the text within that place; none where they differ.
+    pub offset: Option<usize>,
+    /// Where the address stands in that source.
+    pub address_at: Range<usize>,
     pub used: Cell<bool>,
 }
 

@@ -140,7 +140,7 @@ impl<'c, 't> Fields<'c, 't> {
         }
         if let Some(set) = self.context.overridden(&self.address(key)) {
             return Some(Found {
-                raw: Raw::Text(set.text.clone(), Some(0)),
+                raw: Raw::Text(set.text.clone(), set.offset),
                 place: set.place.clone(),
             });
         }

@@ -4,6 +4,7 @@
 
 mod addresses;
 mod adjust;
+mod changes;
 mod context;
 mod fields;
 mod general;
@@ -23,7 +24,7 @@ mod syntax;
 mod ties;
 mod tolerance;
 
-use std::cell::{Cell, RefCell};
+use std::cell::RefCell;
 use std::collections::{HashMap, HashSet};
 use std::ops::Range;
 
@@ -32,8 +33,9 @@ use toml::de::{DeTable, DeValue};
 
 use crate::cavity::{Cavity, Draft, Form, Index};
 use crate::diagnostic::{Diagnostic, Place, Severity, Source};
+pub use changes::{Changes, Setting};
 pub(crate) use context::nearest;
-use context::{Context, Override, in_order, shown, with_article};
+use context::{Context, in_order, shown, with_article};
 use fields::Fields;
 use keys::{FORMS, KINDS, TOP};
 
@@ -60,7 +62,8 @@ pub struct Loaded {
 pub struct Refused {
     /// Everything that is wrong with it, in the order of the text.
     pub diagnostics: Vec<Diagnostic>,
-    /// The texts that the places point into: the file, then each override.
+    /// The texts that the places point into: the file, then each change in the order in which it
+    /// was made.
     pub sources: Vec<Source>,
 }
 
@@ -69,15 +72,23 @@ pub struct Refused {
 /// # Errors
 /// Everything that is wrong with the text, all at once.
 pub fn load(name: &str, text: &str, overrides: &[String]) -> Result<Loaded, Refused> {
+    let changes = overrides
+        .iter()
+        .fold(Changes::new(), |changes, set| changes.set(set));
+    load_changed(name, text, &changes)
+}
+
+/// Reads a cavity file with changes from elsewhere.
+///
+/// # Errors
+/// Everything that is wrong with the text and the changes, all at once.
+pub fn load_changed(name: &str, text: &str, changes: &Changes) -> Result<Loaded, Refused> {
     let mut sources = vec![Source {
         name: name.into(),
         text: text.into(),
     }];
-    sources.extend(overrides.iter().map(|set| Source {
-        name: "--set".into(),
-        text: set.clone(),
-    }));
-    match load_sources(&sources) {
+    sources.extend_from_slice(changes.sources());
+    match load_sources(&sources, changes) {
         Ok(loaded) => Ok(loaded),
         Err(mut diagnostics) => {
             let key = |d: &Diagnostic| d.place.as_ref().map(|p| (p.source, p.span.start));
@@ -101,7 +112,7 @@ fn error(place: Option<Place>, message: String, help: &str) -> Diagnostic {
     }
 }
 
-fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
+fn load_sources(sources: &[Source], changes: &Changes) -> Result<Loaded, Vec<Diagnostic>> {
     let text = &sources[0].text;
     if text.len() > LARGEST_FILE {
         return Err(vec![error(
@@ -120,7 +131,7 @@ fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
     let context = Context {
         sources,
         diagnostics: RefCell::default(),
-        overrides: read_overrides(sources)?,
+        overrides: changes.overrides()?,
         book: RefCell::default(),
         places: RefCell::default(),
         tied: HashSet::new(),
@@ -128,50 +139,25 @@ fn load_sources(sources: &[Source]) -> Result<Loaded, Vec<Diagnostic>> {
         general: RefCell::default(),
         general_refused: RefCell::default(),
     };
-    read_file(context, &table)
-}
-
-fn read_overrides(sources: &[Source]) -> Result<Vec<Override>, Vec<Diagnostic>> {
-    let mut faults = Vec::new();
-    let mut overrides = Vec::new();
-    for (index, source) in sources.iter().enumerate().skip(1) {
-        let Some((address, value)) = source.text.split_once('=') else {
-            faults.push(error(
-                Some(Place {
-                    source: index,
-                    span: 0..source.text.len(),
-                }),
-                "a setting needs an address, = and a value".into(),
-                "write it like --set 'M3.roc=75 mm'",
-            ));
-            continue;
-        };
-        let trimmed = value.trim();
-        let start = address.len() + 1 + (value.len() - value.trim_start().len());
-        overrides.push(Override {
-            address: address.trim().into(),
-            text: trimmed.trim_matches('"').into(),
-            place: Place {
-                source: index,
-                span: start..start + trimmed.len(),
-            },
-            used: Cell::new(false),
-        });
-    }
-    if faults.is_empty() {
-        Ok(overrides)
-    } else {
-        Err(faults)
-    }
+    read_file(context, &table, changes.ties())
 }
 
 fn read_file<'t>(
     mut context: Context<'t>,
     table: &'t Spanned<DeTable<'t>>,
+    more_ties: &[usize],
 ) -> Result<Loaded, Vec<Diagnostic>> {
     let top = table.get_ref();
     let whole = 0..0;
-    let ties = read_ties(&context, top);
+    let mut ties = read_ties(&context, top);
+    for source in more_ties {
+        let text = &context.sources[*source].text;
+        let place = Place {
+            source: *source,
+            span: 0..text.len(),
+        };
+        ties.extend(ties::split(&context, text, place, Some(0)));
+    }
     context.tied = ties.iter().map(|tie| tie.target.clone()).collect();
     let context = context;
     let fields = Fields::new(&context, top, whole).knowing(&TOP);
@@ -362,7 +348,7 @@ fn read_ties<'t>(context: &Context<'t>, top: &'t DeTable<'t>) -> Vec<ties::Writt
             let found = context.found(item);
             match found.raw {
                 context::Raw::Text(text, offset) => {
-                    ties::split(context, &text, found.place, offset.unwrap_or(0))
+                    ties::split(context, &text, found.place, offset)
                 }
                 _ => {
                     context.report(Some(found.place), "a tie is a text in quotes", advice);
@@ -410,7 +396,7 @@ fn report_unused_overrides(context: &Context<'_>) {
         let help = context.instead_of(&set.address);
         let place = Place {
             source: set.place.source,
-            span: 0..set.address.len(),
+            span: set.address_at.clone(),
         };
         context.report(
             Some(place),

@@ -13,7 +13,8 @@ pub(super) struct Written {
     text: String,
     /// Place of the whole text.
     place: Place,
-    offset: usize,
+    /// Offset of the text within its place; none where escapes hide it.
+    offset: Option<usize>,
 }
 
 struct Term {
@@ -31,7 +32,7 @@ pub(super) fn split(
     context: &Context<'_>,
     text: &str,
     place: Place,
-    offset: usize,
+    offset: Option<usize>,
 ) -> Option<Written> {
     let Some((target, sum)) = text.split_once('=') else {
         context.report(Some(place), "a tie says what follows what, with a =", FORM);
@@ -248,10 +249,10 @@ impl Written {
     }
 
     fn part(&self, text: &str, at: usize) -> Place {
-        if self.offset == 0 {
+        let Some(offset) = self.offset else {
             return self.place.clone();
-        }
-        let start = self.place.span.start + self.offset + at;
+        };
+        let start = self.place.span.start + offset + at;
         Place {
             source: self.place.source,
             span: start..start + text.len(),
@@ -319,8 +320,9 @@ pub(super) fn resolve_all(context: &Context<'_>, written: &[Written]) {
             continue;
         }
         if stated && (new.value - old.value).abs() > AGREES_WITHIN * old.value.abs() {
-            // An override upstream moves a tied number away from what the file says of it.
-            let moved = context.overrides.iter().any(|o| o.used.get());
+            // An override upstream moves a tied number away from what the file says of it, and so
+            // does a tie that is not the file's own.
+            let moved = written.place.source != 0 || context.overrides.iter().any(|o| o.used.get());
             if !moved {
                 context.report(
                     context.places.borrow().get(&old.address).cloned(),

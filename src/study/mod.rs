@@ -1,4 +1,5 @@
 //! Many cavities, few analyses: sweeps and tolerances.
 
 pub mod batch;
+pub mod sweep;
 pub mod tolerance;

@@ -5,6 +5,7 @@ mod manual;
 mod materials;
 mod new;
 mod schema;
+mod sweep;
 mod tolerance;
 
 use std::io::Write;
@@ -75,6 +76,7 @@ fn every_help_fits_80_columns_and_shows_an_example() {
     fits_80_columns(&fine(&["--help"]));
     for command in [
         "check",
+        "sweep",
         "materials",
         "tolerance",
         "new",

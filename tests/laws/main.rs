@@ -9,6 +9,7 @@ mod ranges;
 mod second_road;
 mod second_type;
 mod spec;
+mod swept;
 mod tolerance;
 mod trace3d;
 

@@ -160,3 +160,48 @@ fn a_map_is_in_the_png_too() {
         assert!(pixels.contains(&fill), "{fill:06x}");
     }
 }
+
+/// What a sweep found is drawn where it was found.
+#[test]
+fn a_sweep_shows_its_ranges_stationary_spots_and_limits() {
+    let chart = chart("swept pump");
+    for panel in &chart.panels {
+        let ranges = panel.layers.iter().filter(|l| matches!(l, Layer::Range(_)));
+        assert_eq!(ranges.count(), 1, "{}", panel.heading);
+    }
+    let rod = chart
+        .panels
+        .iter()
+        .find(|p| p.heading == "rod.spot")
+        .unwrap();
+    let marks: Vec<[f64; 2]> = (rod.layers.iter())
+        .filter_map(|layer| match layer {
+            Layer::Mark(mark) => Some(mark.places[0].1),
+            _ => None,
+        })
+        .collect();
+    assert_eq!(marks.len(), 1);
+    // The text of the command says 499.5 µm at 227.78 W.
+    assert!((marks[0][0] - 227.78).abs() < 0.01 && (marks[0][1] - 499.5e-6).abs() < 1e-7);
+    let limits = (rod.layers.iter())
+        .filter(|layer| matches!(layer, Layer::Reference(line) if line.label.starts_with("limit")));
+    assert_eq!(limits.count(), 2);
+}
+
+/// The map of a measure that exists everywhere is empty too where there is no mode.
+#[test]
+fn a_map_of_a_sweep_is_empty_where_unstable() {
+    let chart = chart("map of two");
+    for panel in &chart.panels {
+        let Layer::Map(map) = &panel.layers[0] else {
+            panic!("no map");
+        };
+        let known = map.values.iter().flatten().count();
+        assert!(
+            known > 0 && known < map.values.len() / 2,
+            "{}",
+            panel.heading
+        );
+        assert!(map.nominal.is_some());
+    }
+}

@@ -9,5 +9,6 @@ mod kids_1972;
 mod kogelnik_li;
 mod lens_like_media;
 mod lens_maker;
+mod magni;
 mod real_cavities;
 mod second_sources;

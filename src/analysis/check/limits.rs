@@ -3,9 +3,9 @@
 use super::TOO_LARGE;
 use super::result::{LimitCheck, Range};
 use crate::analysis::eigenmode::Stability;
-use crate::analysis::measures::{Evaluator, Workspace};
+use crate::analysis::measures::{Evaluator, Workspace, why_none};
 use crate::analysis::ranges::{End, QuantityRange};
-use crate::cavity::{Cavity, Entry, Measure};
+use crate::cavity::{Cavity, Entry};
 use crate::quantity::Spread;
 
 pub(super) fn describe_range(cavity: &Cavity, found: QuantityRange, stability: Stability) -> Range {
@@ -67,14 +67,6 @@ fn tolerance(entry: &Entry) -> Option<f64> {
     Some(half)
 }
 
-fn no_value(measure: Measure) -> &'static str {
-    match measure {
-        Measure::Finesse | Measure::Linewidth => "nothing is written of any loss",
-        Measure::ModeClearance { .. } => "the cavity holds no mode, or no loss is written",
-        _ => "the cavity holds no mode",
-    }
-}
-
 pub(super) fn limits(cavity: &Cavity, values: &[f64]) -> Vec<LimitCheck> {
     let measures = cavity.limits.iter().map(|limit| limit.measure).collect();
     let mut found = Vec::new();
@@ -96,7 +88,7 @@ pub(super) fn limits(cavity: &Cavity, values: &[f64]) -> Vec<LimitCheck> {
                 wanted: limit.bounds.to_string(),
                 why: value.is_none().then(|| match found {
                     Some(_) => TOO_LARGE.into(),
-                    None => no_value(limit.measure).into(),
+                    None => why_none(limit.measure).into(),
                 }),
                 limit: limit.clone(),
             }

@@ -144,3 +144,12 @@ pub fn value(cavity: &Cavity, values: &[f64], measure: Measure) -> Option<f64> {
     );
     found
 }
+
+/// Why a measure has no value where it has none.
+pub fn why_none(measure: Measure) -> &'static str {
+    match measure {
+        Measure::Finesse | Measure::Linewidth => "nothing is written of any loss",
+        Measure::ModeClearance { .. } => "the cavity holds no mode, or no loss is written",
+        _ => "the cavity holds no mode",
+    }
+}

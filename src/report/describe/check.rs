@@ -377,7 +377,7 @@ fn length_to(x: f64, digits: usize) -> String {
 }
 
 /// A value of a quantity in the unit of its kind.
-fn value(x: f64, kind: Kind) -> String {
+pub(super) fn value(x: f64, kind: Kind) -> String {
     match kind {
         Kind::Length => length(x),
         Kind::Radius if x == 0.0 => "flat".into(),

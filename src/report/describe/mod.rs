@@ -5,6 +5,8 @@ mod envelope;
 pub mod materials;
 mod measured;
 mod sections;
+mod sweep;
+mod sweep_chart;
 mod tolerance;
 mod tolerance_chart;
 mod verdict;
@@ -12,5 +14,7 @@ mod waists;
 
 pub use check::describe as check;
 pub use envelope::describe as envelope;
+pub use sweep::describe as sweep;
+pub use sweep_chart::describe as sweep_chart;
 pub use tolerance::describe as tolerance;
 pub use tolerance_chart::describe as tolerance_chart;

@@ -1,6 +1,9 @@
 //! Tables as comma-separated values: SI units, full precision, names as in the JSON.
 
 use crate::analysis::check::{Check, Spot};
+use crate::cavity::Presence;
+use crate::quantity::Kind;
+use crate::study::sweep::{Even, Sweep, Varied};
 use crate::study::tolerance::Tolerance;
 
 const STATIONS: [&str; 12] = [
@@ -61,4 +64,62 @@ pub fn stations(check: &Check) -> Result<Vec<u8>, csv::Error> {
     table
         .into_inner()
         .map_err(|error| error.into_error().into())
+}
+
+/// The points of a sweep, one a row; a value that does not exist is an empty field.
+///
+/// A radius or focal length is written in metres, or as its reciprocal where the range passes flat.
+///
+/// # Errors
+/// Those of [`stations`].
+pub fn sweep(sweep: &Sweep) -> Result<Vec<u8>, csv::Error> {
+    let mut table = csv::Writer::from_writer(Vec::new());
+    let number = |x: Option<f64>| x.map_or(String::new(), |x| format!("{x:?}"));
+    let quantities = sweep
+        .vary
+        .iter()
+        .map(|varied| format!("{}{}", varied.quantity, suffix_along(varied)));
+    let measures = sweep.measures.0.iter().map(|(name, column)| {
+        let suffix = match column.measure.presence() {
+            Presence::Number => "",
+            Presence::Length | Presence::Position => "_m",
+            Presence::Angle => "_rad",
+            Presence::Frequency => "_hz",
+        };
+        format!("{name}{suffix}")
+    });
+    table.write_record(quantities.chain(measures))?;
+    let inner = sweep.vary.get(1).map_or(1, |second| second.kept.len());
+    for point in 0..sweep.stable.len() {
+        let places = [point / inner, point % inner];
+        let quantities = sweep.vary.iter().zip(places).map(|(varied, place)| {
+            number(match varied.even {
+                Even::Kept => varied.kept.get(place).copied(),
+                Even::AsWritten { .. } => varied.as_written(place),
+            })
+        });
+        let measures = (sweep.measures.0.iter())
+            .map(|(_, column)| number(column.values.get(point).copied().flatten()));
+        table.write_record(quantities.chain(measures))?;
+    }
+    table
+        .into_inner()
+        .map_err(|error| error.into_error().into())
+}
+
+/// The unit behind a quantity's name.
+fn suffix_along(varied: &Varied) -> &'static str {
+    match varied.kind {
+        Kind::Radius | Kind::Face | Kind::Focal if varied.even == Even::Kept => "_per_m",
+        Kind::Length | Kind::Position | Kind::Radius | Kind::Face | Kind::Focal => "_m",
+        Kind::Angle | Kind::SlabAngle => "_rad",
+        Kind::Curvature | Kind::Strength => "_per_m",
+        Kind::Frequency => "_hz",
+        Kind::Power => "_w",
+        Kind::Energy => "_j",
+        Kind::Time => "_s",
+        Kind::Temperature => "_k",
+        Kind::PerWatt => "_per_w",
+        Kind::Number | Kind::Ratio | Kind::Loss | Kind::Damage => "",
+    }
 }

@@ -3,6 +3,7 @@
 mod areas;
 mod curves;
 mod hard;
+mod swept;
 
 use modewright::report::chart::{Across, Chart, Layer, Meaning, Panel, Range, Reference};
 use modewright::report::figure::{Axis, Mark, Stroke};
@@ -30,6 +31,11 @@ pub fn all() -> Vec<Case> {
         ("tiny range", hard::tiny_range()),
         ("huge values", hard::huge_values()),
         ("empty", hard::empty()),
+        ("swept gap", swept::gap()),
+        ("swept pump", swept::pump()),
+        ("swept through flat", swept::through_flat()),
+        ("swept without a mode", swept::without_mode()),
+        ("map of two", swept::two()),
         ("crowded", hard::crowded()),
     ]
 }

@@ -1,149 +1,13 @@
-//! How far one quantity may move while all others stay, before the cavity ceases to be stable.
-//!
-//! The edges of a ring are the roots of h = ±1. A standing cavity has h = AD + BC with the matrix
-//! of one way, and its edges are the roots of A, B, C and D: where two of them vanish together
-//! the half-trace only *touches* ±1, which a search of h for changes of sign would miss. A touch
-//! ends a range all the same, and is named so.
+//! The functions whose roots are the edges, and the search for them along one quantity.
 
-use super::eigenmode::{EDGE, PlaneMode};
-use super::lengths::RoundTripLengths;
-use super::measures::{Evaluator, Workspace};
+use super::End;
+use crate::analysis::eigenmode::{EDGE, PlaneMode};
+use crate::analysis::lengths::RoundTripLengths;
+use crate::analysis::measures::{Evaluator, Workspace};
 use crate::cavity::{Cavity, Form, Slot};
 use crate::numeric::roots::{DEGREE, Proxy, bracketed, nodes};
 use crate::optics::Plane;
 use crate::quantity::Kind;
-
-/// Where a range ends.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum End {
-    /// |half-trace| reaches 1 there.
-    Edge {
-        /// The quantity's value, in SI units (1/R for a radius, 1/f for a focal length).
-        at: f64,
-        /// The plane that becomes unstable.
-        plane: Plane,
-        /// Whether the cavity is stable again beyond.
-        touch: bool,
-    },
-    /// A length, its own or a tied one, reaches zero first.
-    Zero {
-        /// The quantity's value there.
-        at: f64,
-    },
-    /// No edge as far as was searched.
-    Open,
-}
-
-impl End {
-    /// The value of the quantity, if the range ends.
-    pub fn value(self) -> Option<f64> {
-        match self {
-            End::Edge { at, .. } | End::Zero { at } => Some(at),
-            End::Open => None,
-        }
-    }
-}
-
-/// A stretch of values of one quantity over which the cavity is stable.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Range {
-    /// Its lower end.
-    pub from: End,
-    /// Its upper end.
-    pub to: End,
-}
-
-/// What is known about one quantity.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct QuantityRange {
-    /// The quantity.
-    pub slot: Slot,
-    /// Its nominal value, in SI units (1/R for a radius, 1/f for a focal length).
-    pub nominal: f64,
-    /// The range that holds the nominal value or, where the cavity is not stable, the nearest one;
-    /// none where no value of this quantity alone makes it stable.
-    pub range: Option<Range>,
-    /// How much of a change brings the cavity to the range, relative to the quantity itself; zero
-    /// where it is stable.
-    pub change_needed: f64,
-}
-
-/// The range of every quantity that a builder can move, in the order of the file.
-pub fn stable_ranges(cavity: &Cavity) -> Vec<QuantityRange> {
-    cavity
-        .book()
-        .iter()
-        .filter(|(slot, entry)| {
-            let movable = entry.shapes_the_mode()
-                && entry.origin == crate::cavity::Origin::Written
-                && (entry.part.is_some() || *slot == Cavity::PUMP);
-            movable && cavity.moves_rays(*slot)
-        })
-        .map(|(slot, _)| stable_range(cavity, slot))
-        .collect()
-}
-
-/// The range of one quantity.
-pub fn stable_range(cavity: &Cavity, slot: Slot) -> QuantityRange {
-    let mut probe = Probe::new(cavity, slot);
-    let nominal = probe.nominal;
-    let (upwards, downwards) = (probe.search(1.0), probe.search(-1.0));
-    let stable = probe.margin(nominal) > EDGE;
-    let range = if stable {
-        // Both searches begin inside the range.
-        upwards.zip(downwards).map(|(up, down)| Range {
-            from: down.1,
-            to: up.1,
-        })
-    } else {
-        let distance = |found: &(End, End)| {
-            found
-                .0
-                .value()
-                .map_or(f64::INFINITY, |x| (x - nominal).abs())
-        };
-        let up = upwards.map(|found| {
-            (
-                distance(&found),
-                Range {
-                    from: found.0,
-                    to: found.1,
-                },
-            )
-        });
-        let down = downwards.map(|found| {
-            (
-                distance(&found),
-                Range {
-                    from: found.1,
-                    to: found.0,
-                },
-            )
-        });
-        match (up, down) {
-            (Some(up), Some(down)) => Some(if up.0 <= down.0 { up.1 } else { down.1 }),
-            (up, down) => up.or(down).map(|found| found.1),
-        }
-    };
-    let change_needed = match range {
-        Some(range) if !stable => {
-            let nearest = [range.from, range.to]
-                .into_iter()
-                .filter_map(End::value)
-                .map(|x| (x - nominal).abs())
-                .fold(f64::INFINITY, f64::min);
-            let own = nominal.abs();
-            nearest / if own > 0.0 { own } else { probe.scale }
-        }
-        _ => 0.0,
-    };
-    QuantityRange {
-        slot,
-        nominal,
-        range,
-        change_needed,
-    }
-}
 
 /// How far the search for an edge of a stable cavity goes, in multiples of the quantity's natural
 /// scale.
@@ -162,19 +26,21 @@ const SAME: f64 = 1e-12;
 /// Functions whose roots are the edges: four a plane in a standing cavity, two in a ring.
 const FUNCTIONS: usize = 8;
 
-struct Probe<'a> {
+pub(super) struct Probe<'a> {
     cavity: &'a Cavity,
     slot: Slot,
     /// The walk with everything multiplied out that the quantity leaves alone.
     walk: Evaluator<'a>,
     workspace: Workspace<f64>,
     values: Vec<f64>,
-    nominal: f64,
+    pub(super) nominal: f64,
     /// A change that matters: the round trip's length, or its reciprocal for curvatures.
-    scale: f64,
+    pub(super) scale: f64,
     lowest: Bound,
     highest: Bound,
     evaluations: usize,
+    /// Evaluations that may be spent on one search.
+    pub(super) budget: usize,
 }
 
 /// Where a search ends.
@@ -192,20 +58,41 @@ struct Sample {
     rounding: f64,
 }
 
+/// A root: an edge of one plane.
 #[derive(Clone, Copy)]
-struct Event {
-    at: f64,
-    plane: Plane,
+pub(super) struct Event {
+    pub(super) at: f64,
+    pub(super) plane: Plane,
 }
 
 impl<'a> Probe<'a> {
-    fn new(cavity: &'a Cavity, slot: Slot) -> Self {
+    /// A probe from the nominal value as far as anybody would go.
+    pub(super) fn new(cavity: &'a Cavity, slot: Slot) -> Self {
+        let mut probe = Probe::unbounded(cavity, slot);
+        let (nominal, scale) = (probe.nominal, probe.scale);
+        let reach = if probe.margin(nominal) > EDGE {
+            REACH
+        } else {
+            REACH_BACK
+        };
+        probe.lowest.at -= reach * scale;
+        probe.highest.at += reach * scale;
+        if cavity.book().entry(slot).kind == Kind::Length || slot == Cavity::PUMP {
+            probe.lowest = Bound {
+                at: 0.0,
+                vanishes: true,
+            };
+        }
+        probe.stop_where_tied_lengths_vanish();
+        probe
+    }
+
+    /// A probe without bounds of its own.
+    pub(super) fn unbounded(cavity: &'a Cavity, slot: Slot) -> Self {
         let values = cavity.book().nominal();
         let nominal = slot.of(&values);
-        let entry = cavity.book().entry(slot);
         let length = RoundTripLengths::of(cavity, &values).geometric;
-        let is_length = entry.kind == Kind::Length;
-        let scale = if is_length {
+        let scale = if cavity.book().entry(slot).kind == Kind::Length {
             length
         } else if slot == Cavity::PUMP {
             nominal.max(1.0)
@@ -216,7 +103,7 @@ impl<'a> Probe<'a> {
             at: nominal,
             vanishes: false,
         };
-        let mut probe = Probe {
+        Probe {
             cavity,
             slot,
             walk: Evaluator::new(cavity, Vec::new()).varying(&[slot]),
@@ -227,22 +114,8 @@ impl<'a> Probe<'a> {
             lowest: nowhere,
             highest: nowhere,
             evaluations: 0,
-        };
-        let reach = if probe.margin(nominal) > EDGE {
-            REACH
-        } else {
-            REACH_BACK
-        };
-        probe.lowest.at -= reach * scale;
-        probe.highest.at += reach * scale;
-        if is_length || slot == Cavity::PUMP {
-            probe.lowest = Bound {
-                at: 0.0,
-                vanishes: true,
-            };
+            budget: BUDGET,
         }
-        probe.stop_where_tied_lengths_vanish();
-        probe
     }
 
     /// A tied length is linear in what it follows: it bounds the search where it reaches zero.
@@ -300,7 +173,7 @@ impl<'a> Probe<'a> {
         )
     }
 
-    fn margin(&mut self, x: f64) -> f64 {
+    pub(super) fn margin(&mut self, x: f64) -> f64 {
         self.sample(x).1
     }
 
@@ -309,7 +182,7 @@ impl<'a> Probe<'a> {
     }
 
     /// The first stable range in one direction: its near and its far end.
-    fn search(&mut self, direction: f64) -> Option<(End, End)> {
+    pub(super) fn search(&mut self, direction: f64) -> Option<(End, End)> {
         self.evaluations = 0;
         let Bound {
             at: limit,
@@ -320,10 +193,10 @@ impl<'a> Probe<'a> {
             self.lowest
         };
         let mut near = self.nominal;
-        let mut near_end = self.edge_at_nominal(direction);
+        let mut near_end = self.edge_at(self.nominal, direction);
         let mut width = self.scale * 0.03;
         let mut start = self.nominal;
-        while (limit - start) * direction > 0.0 && self.evaluations < BUDGET {
+        while (limit - start) * direction > 0.0 && self.evaluations < self.budget {
             let reach = start + direction * width;
             let stop = if (limit - reach) * direction > 0.0 {
                 reach
@@ -366,9 +239,8 @@ impl<'a> Probe<'a> {
     }
 
     /// The near end of a range that begins where the search does: an edge, if the cavity is on one.
-    fn edge_at_nominal(&mut self, direction: f64) -> End {
-        let nominal = self.nominal;
-        if self.margin(nominal).abs() > EDGE {
+    pub(super) fn edge_at(&mut self, at: f64, direction: f64) -> End {
+        if self.margin(at).abs() > EDGE {
             return End::Open;
         }
         let way = self.cavity.one_way(&self.values);
@@ -378,21 +250,26 @@ impl<'a> Probe<'a> {
             .into_iter()
             .min_by(|a, b| f64::total_cmp(&margin(a), &margin(b)))
             .unwrap_or(Plane::Tangential);
-        let beside = nominal - direction * 1e-6 * self.scale;
+        let beside = at - direction * 1e-6 * self.scale;
         End::Edge {
-            at: nominal,
+            at,
             plane,
             touch: self.margin(beside) > 0.0,
         }
     }
 
-    fn is_stable_between(&mut self, a: f64, b: f64) -> bool {
+    pub(super) fn is_stable_between(&mut self, a: f64, b: f64) -> bool {
         a != b && self.margin(0.5 * (a + b)) > 0.0
     }
 
     /// All edges from `start` towards `stop`, nearest first, and how far the search has come: less
     /// far where the functions vary too fast, up to `limit` where all of them are straight lines.
-    fn events_between(&mut self, start: f64, stop: f64, limit: f64) -> (Vec<Event>, f64) {
+    pub(super) fn events_between(
+        &mut self,
+        start: f64,
+        stop: f64,
+        limit: f64,
+    ) -> (Vec<Event>, f64) {
         let mut stop = stop;
         loop {
             let (low, high) = (start.min(stop), start.max(stop));
@@ -402,7 +279,7 @@ impl<'a> Probe<'a> {
                 Proxy::new(low, high, &values)
             });
             if !proxies.iter().all(Proxy::is_resolved) {
-                if self.evaluations >= BUDGET {
+                if self.evaluations >= self.budget {
                     // Nothing is claimed about what has not been searched.
                     return (Vec::new(), start);
                 }
@@ -438,9 +315,15 @@ impl<'a> Probe<'a> {
             }
             events.retain(|e| (e.at - start) * ahead > 0.0 && (stop - e.at) * ahead >= 0.0);
             events.sort_by(|a, b| f64::total_cmp(&(a.at * ahead), &(b.at * ahead)));
-            events.dedup_by(|b, a| (a.at - b.at).abs() <= same.max(SAME * a.at.abs()));
+            self.merge(&mut events);
             return (events, stop);
         }
+    }
+
+    /// Keeps one of those edges in order that are one edge.
+    pub(super) fn merge(&self, events: &mut Vec<Event>) {
+        let same = SAME * self.scale;
+        events.dedup_by(|b, a| (a.at - b.at).abs() <= same.max(SAME * a.at.abs()));
     }
 
     /// The root of a straight line, sharpened on the function itself.

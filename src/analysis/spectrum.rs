@@ -4,7 +4,7 @@
 //! spectral range to either side; ψ is the Gouy phase of a round trip and F the number of flips of
 //! an axis (Kogelnik & Li, Appl. Opt. 5, 1550 (1966), with the flips of a ring's frame).
 
-use std::f64::consts::TAU;
+use std::f64::consts::{FRAC_2_PI, PI, TAU};
 
 use super::eigenmode::PlaneMode;
 use crate::cavity::Cavity;
@@ -67,6 +67,28 @@ pub fn each_nearness<T: Real>(
         }
         turns = turns + spacing.tangential;
     }
+}
+
+/// Offset of TEM_mn from the fundamental in free spectral ranges, in [−½, ½), from the spacings of
+/// [`spacings`].
+pub fn offset(spacing: PerPlane<f64>, m: usize, n: usize) -> f64 {
+    let tangential = Real::folded(spacing.tangential * m as f64);
+    let sagittal = Real::folded(spacing.sagittal * n as f64);
+    in_one_range(tangential + sagittal)
+}
+
+/// A frequency in free spectral ranges, folded into [−½, ½).
+pub fn in_one_range(turns: f64) -> f64 {
+    let folded = Real::folded(turns);
+    if folded >= 0.5 { folded - 1.0 } else { folded }
+}
+
+/// How much less of the power a mode holds at an offset (in free spectral ranges) than on its own
+/// resonance: 1 + F_c sin²(πΔ/FSR), with F_c = (2ℱ/π)² the coefficient of finesse.
+#[inline(always)]
+pub fn suppression<T: Real>(offset: T, finesse: T) -> T {
+    let coefficient = (finesse * FRAC_2_PI).squared();
+    coefficient * (offset * PI).sin().squared() + 1.0
 }
 
 /// The least |offset| from the fundamental of any TEM_mn with 1 ≤ m + n ≤ `highest`, in free

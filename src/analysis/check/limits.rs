@@ -69,8 +69,10 @@ fn tolerance(entry: &Entry) -> Option<f64> {
 
 fn no_value(measure: Measure) -> &'static str {
     match measure {
-        Measure::Finesse | Measure::Linewidth => "nothing is written of any loss",
-        Measure::ModeClearance { .. } => "the cavity holds no mode, or no loss is written",
+        Measure::Finesse | Measure::Linewidth | Measure::Lifetime => {
+            "nothing is written of any loss"
+        }
+        Measure::ModeClearance { .. } | Measure::Suppression { .. } => "the cavity holds no mode, or no loss is written",
         _ => "the cavity holds no mode",
     }
 }

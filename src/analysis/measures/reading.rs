@@ -87,11 +87,27 @@ impl<'a, T: Real> Reading<'a, T> {
                 let (finesse, exists) = self.finesse();
                 (self.lengths().free_spectral_range() / finesse, exists)
             }
+            Measure::Lifetime => {
+                let attenuation = self.attenuation();
+                let exists = T::constant(0.0).less(attenuation);
+                let lost = T::select(exists, attenuation, T::constant(1.0));
+                ((self.lengths().free_spectral_range() * lost).recip(), exists)
+            }
+            Measure::Spacing(plane) => {
+                let spacing = spectrum::spacings(self.cavity, self.modes)[plane].folded();
+                let fsr = self.lengths().free_spectral_range();
+                (spacing * fsr, self.modes[plane].stable)
+            }
             Measure::ModeClearance { up_to } => {
                 let (finesse, exists) = self.finesse();
-                let spacings = spectrum::spacings(self.cavity, self.modes);
-                let offset = spectrum::least_offset(spacings, up_to, multiples);
+                let offset = self.least_offset(up_to, multiples);
                 (offset * finesse, exists & self.both_stable())
+            }
+            Measure::Suppression { up_to } => {
+                let (finesse, exists) = self.finesse();
+                let offset = self.least_offset(up_to, multiples);
+                let suppression = spectrum::suppression(offset, finesse);
+                (suppression, exists & self.both_stable())
             }
         }
     }
@@ -237,10 +253,27 @@ impl<'a, T: Real> Reading<'a, T> {
     }
 
     #[inline(always)]
+    fn least_offset(&self, up_to: usize, multiples: &mut Multiples<T>) -> T {
+        let spacings = spectrum::spacings(self.cavity, self.modes);
+        spectrum::least_offset(spacings, up_to, multiples)
+    }
+
+    #[inline(always)]
+    fn attenuation(&self) -> T {
+        match self.evaluator.attenuation {
+            Some(attenuation) => T::constant(attenuation),
+            None => {
+                let polarisation = self.cavity.polarisation;
+                airy::round_trip_attenuation(self.cavity, self.values, polarisation)
+            }
+        }
+    }
+
+    #[inline(always)]
     fn finesse(&self) -> (T, T::Mask) {
         match self.evaluator.finesse {
             Some((finesse, exists)) => (T::constant(finesse), T::always(exists)),
-            None => airy::finesse(airy::round_trip_attenuation(self.cavity, self.values)),
+            None => airy::finesse(self.attenuation()),
         }
     }
 

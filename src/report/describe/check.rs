@@ -7,7 +7,9 @@ use crate::cavity::{Bounds, Presence};
 use crate::optics::Plane;
 use crate::quantity::Kind;
 use crate::report::document::{Block, Document, Table, Tone};
-use crate::report::number::{ANGLES, LENGTHS, NOTHING, Scale, common, fixed, plain, significant};
+use crate::report::number::{
+    ANGLES, LENGTHS, NOTHING, Scale, TIMES, common, fixed, plain, significant,
+};
 
 /// The result of a check as a document.
 pub fn describe(check: &Check) -> Document {
@@ -123,7 +125,7 @@ fn summary(document: &mut Document, check: &Check) {
 }
 
 fn frequency(hertz: f64) -> String {
-    let (size, unit) = match hertz {
+    let (size, unit) = match hertz.abs() {
         f if f >= 1e12 => (1e12, "THz"),
         f if f >= 1e9 => (1e9, "GHz"),
         f if f >= 1e6 => (1e6, "MHz"),
@@ -577,6 +579,12 @@ fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> String) -> Str
             format!("{} {}", digits(x / scale.size, 4), scale.symbol)
         }
         Presence::Angle => format!("{} rad", digits(x, 4)),
-        Presence::Frequency => frequency(x),
+        Presence::Frequency | Presence::Offset => frequency(x),
+        Presence::Time => {
+            // A time is shorter than whatever rounds to nothing elsewhere.
+            let fits = TIMES.iter().rev().find(|scale| x.abs() >= scale.size);
+            let scale = fits.unwrap_or(&TIMES[0]);
+            format!("{} {}", digits(x / scale.size, 4), scale.symbol)
+        }
     }
 }

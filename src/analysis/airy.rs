@@ -76,14 +76,6 @@ pub fn loss_slots(cavity: &Cavity) -> Vec<Slot> {
     slots.into_iter().flatten().collect()
 }
 
-/// The other of the two linear polarisations.
-pub fn other(polarisation: Polarisation) -> Polarisation {
-    match polarisation {
-        Polarisation::S => Polarisation::P,
-        Polarisation::P => Polarisation::S,
-    }
-}
-
 /// The finesse π√ρ/(1 − ρ) from −ln ρ², and whether it exists: without losses it does not.
 ///
 /// √ρ/(1 − ρ) = 1/(2 sinh(x/4)) with x = −ln ρ², free of cancellation.

@@ -24,9 +24,6 @@ pub fn spacings<T: Real>(cavity: &Cavity, modes: &PerPlane<PlaneMode<T>>) -> Per
     }
 }
 
-/// Highest order m + n that is ever looked at.
-pub const HIGHEST_ORDER: usize = 100;
-
 /// Multiples of a spacing, folded: the table from which offsets of modes are summed.
 #[derive(Clone, Debug)]
 pub struct Multiples<T>(Vec<T>);

@@ -85,8 +85,8 @@ pub struct MeasureError {
 /// Measures that will be named but cannot be computed yet.
 const LATER: [&str; 3] = ["buildup", "parasitic", "coupling"];
 
-/// Highest order m + n that a measure can ask for.
-const HIGHEST_ORDER: usize = 100;
+/// Highest order m + n of transverse modes that is ever looked at.
+pub const HIGHEST_ORDER: usize = 100;
 
 /// Measures of a whole cavity and of a part, for suggestions.
 const KNOWN: &str = "margin, half_trace.tangential, gouy.tangential, round_trip_length, fsr, \

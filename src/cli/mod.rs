@@ -7,6 +7,7 @@ mod check;
 mod input;
 mod manual;
 mod materials;
+mod modes;
 mod new;
 mod output;
 mod picture;
@@ -34,8 +35,7 @@ const WRONG_INPUT: u8 = 2;
 const FAULT: u8 = 3;
 
 /// Commands that are named but cannot be given yet.
-const LATER: [&str; 12] = [
-    "modes",
+const LATER: [&str; 11] = [
     "response",
     "couple",
     "fit-beam",
@@ -72,6 +72,8 @@ enum Colour {
 enum Command {
     /// Is the cavity stable, how far may each part move, how large is the beam everywhere?
     Check(check::Typed),
+    /// Where do the transverse modes resonate, which disturb the fundamental, and how to move out?
+    Modes(modes::Typed),
     /// Which materials are known, with their sources, and what is their index at a wavelength?
     Materials(materials::Typed),
     /// Print or write a cavity file to start from
@@ -155,6 +157,7 @@ pub fn run() -> ExitCode {
     };
     let answer = catch_unwind(|| match &typed.command {
         Command::Check(typed) => check::run(typed),
+        Command::Modes(typed) => modes::run(typed),
         Command::Materials(typed) => materials::run(typed),
         Command::New(typed) => new::run(typed),
         Command::Schema(_) => schema::run(),

@@ -3,6 +3,7 @@
 mod csv;
 mod manual;
 mod materials;
+mod modes;
 mod new;
 mod schema;
 
@@ -75,6 +76,7 @@ fn every_help_fits_80_columns_and_shows_an_example() {
     for command in [
         "check",
         "materials",
+        "modes",
         "new",
         "schema",
         "completions",

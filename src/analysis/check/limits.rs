@@ -72,7 +72,9 @@ fn no_value(measure: Measure) -> &'static str {
         Measure::Finesse | Measure::Linewidth | Measure::Lifetime => {
             "nothing is written of any loss"
         }
-        Measure::ModeClearance { .. } | Measure::Suppression { .. } => "the cavity holds no mode, or no loss is written",
+        Measure::ModeClearance { .. } | Measure::Suppression { .. } => {
+            "the cavity holds no mode, or no loss is written"
+        }
         _ => "the cavity holds no mode",
     }
 }

@@ -91,7 +91,10 @@ impl<'a, T: Real> Reading<'a, T> {
                 let attenuation = self.attenuation();
                 let exists = T::constant(0.0).less(attenuation);
                 let lost = T::select(exists, attenuation, T::constant(1.0));
-                ((self.lengths().free_spectral_range() * lost).recip(), exists)
+                (
+                    (self.lengths().free_spectral_range() * lost).recip(),
+                    exists,
+                )
             }
             Measure::Spacing(plane) => {
                 let spacing = spectrum::spacings(self.cavity, self.modes)[plane].folded();

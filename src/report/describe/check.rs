@@ -124,7 +124,7 @@ fn summary(document: &mut Document, check: &Check) {
     ));
 }
 
-fn frequency(hertz: f64) -> String {
+pub(super) fn frequency(hertz: f64) -> String {
     let (size, unit) = match hertz.abs() {
         f if f >= 1e12 => (1e12, "THz"),
         f if f >= 1e9 => (1e9, "GHz"),
@@ -390,7 +390,7 @@ fn length_to(x: f64, digits: usize) -> String {
 }
 
 /// A value of a quantity in the unit of its kind.
-fn value(x: f64, kind: Kind) -> String {
+pub(super) fn value(x: f64, kind: Kind) -> String {
     match kind {
         Kind::Length => length(x),
         Kind::Radius if x == 0.0 => "flat".into(),
@@ -485,7 +485,7 @@ fn way_back(document: &mut Document, ranges: &[Range]) {
 }
 
 /// A change of a quantity, signed, in its unit.
-fn change(from: f64, to: f64, kind: Kind) -> String {
+pub(super) fn change(from: f64, to: f64, kind: Kind) -> String {
     if (to - from).abs() <= 1e-9 * from.abs() {
         // It stands on the edge.
         return "any".into();

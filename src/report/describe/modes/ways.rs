@@ -1,0 +1,126 @@
+//! How to move out, and where everything keeps its distance.
+
+use super::{is_clear, linewidths, name, short_frequency, wanted};
+use crate::analysis::modes::{Modes, Window};
+use crate::quantity::Kind;
+use crate::report::describe::check::{change, value};
+use crate::report::document::{Block, Document, Table};
+use crate::report::number::significant;
+
+/// Most rows of each table, and most windows of one quantity.
+const MOST_ROWS: usize = 24;
+const MOST_WINDOWS: usize = 4;
+
+/// Single changes that bring the modes as far away as wanted.
+pub(super) fn ways_out(document: &mut Document, modes: &Modes) {
+    if is_clear(modes) {
+        return;
+    }
+    document.heading(format!(
+        "Ways out: by changing one quantity alone, to a clearance of {}",
+        wanted(modes)
+    ));
+    if modes.ways_out.is_empty() {
+        document.text(
+            "None is found. A quantity is moved if it has a tolerance or is named by --free, over \
+             its limits and a tenth of its value.",
+        );
+        return;
+    }
+    let mut table = Table::new(&[
+        "<quantity",
+        "now",
+        "then",
+        "change",
+        "<within\nlimits",
+        "margin",
+        "<nearest\nthen",
+    ]);
+    for way in modes.ways_out.iter().take(MOST_ROWS) {
+        let [from, to] = way.kept;
+        table.rows.push(vec![
+            way.quantity.clone(),
+            value(from, way.kind),
+            value(to, way.kind),
+            change(from, to, way.kind),
+            match way.within_limits {
+                Some(true) => "yes".into(),
+                Some(false) => "no".into(),
+                None => "–".into(),
+            },
+            significant(way.margin, 3),
+            name(way.m, way.n),
+        ]);
+    }
+    document.push(Block::Table(table));
+    cut(document, modes.ways_out.len());
+    if let Some(way) = modes.ways_out.first() {
+        let clearance = match way.mode_clearance_linewidths {
+            Some(count) => linewidths(count),
+            None => short_frequency(way.mode_clearance_hz),
+        };
+        document.aside(format!(
+            "Each is the least change: the clearance there is {clearance}, and grows beyond."
+        ));
+    }
+}
+
+/// Where within its limits each quantity keeps the clearance.
+pub(super) fn windows(document: &mut Document, modes: &Modes) {
+    if modes.windows.is_empty() {
+        return;
+    }
+    document.heading(format!(
+        "Where each alone, within its limits, keeps {}",
+        wanted(modes)
+    ));
+    let mut table = Table::new(&["<quantity", "from", "to", "<holds it now"]);
+    let mut quantities: Vec<&str> = Vec::new();
+    let mut hidden = 0;
+    for window in &modes.windows {
+        let before = modes
+            .windows
+            .iter()
+            .take_while(|other| !std::ptr::eq(*other, window))
+            .filter(|other| other.quantity == window.quantity)
+            .count();
+        if before >= MOST_WINDOWS || table.rows.len() >= MOST_ROWS {
+            hidden += 1;
+            continue;
+        }
+        let repeated = quantities.contains(&window.quantity.as_str());
+        quantities.push(&window.quantity);
+        let [low, high] = rising(window);
+        table.rows.push(vec![
+            if repeated {
+                String::new()
+            } else {
+                window.quantity.clone()
+            },
+            value(low, window.kind),
+            value(high, window.kind),
+            if window.holds_nominal { "yes" } else { "no" }.into(),
+        ]);
+    }
+    document.push(Block::Table(table));
+    if hidden > 0 {
+        document.aside(format!("and {hidden} more windows, in the JSON"));
+    }
+}
+
+/// The ends in the order of the values as written: of a radius the greater curvature is first.
+fn rising(window: &Window) -> [f64; 2] {
+    let [low, high] = window.kept;
+    let is_radius = matches!(window.kind, Kind::Radius | Kind::Face | Kind::Focal);
+    if is_radius && low * high > 0.0 {
+        [high, low]
+    } else {
+        [low, high]
+    }
+}
+
+fn cut(document: &mut Document, count: usize) {
+    if count > MOST_ROWS {
+        document.aside(format!("and {} more, in the JSON", count - MOST_ROWS));
+    }
+}

@@ -9,3 +9,4 @@ mod lens_like_media;
 mod lens_maker;
 mod real_cavities;
 mod second_sources;
+mod transverse_modes;

@@ -84,13 +84,20 @@ pub fn modes(cavity: &Cavity, apart: f64, free: &[Slot]) -> Modes {
         coincidences: Vec::new(),
         ways_out: Vec::new(),
         windows: Vec::new(),
-        cautions: cautions(cavity, finesse),
+        cautions: cautions(cavity),
         why: None,
         tangential_is_horizontal: cavity.tangential_is_horizontal(),
     };
     if found.no_answer.is_some() {
         found.why.clone_from(&found.no_answer);
         return found;
+    }
+    if finesse.is_none() {
+        found.cautions.push(
+            "nothing is written of any loss: there is no linewidth, and modes within 1 % of the \
+             free spectral range count as near"
+                .into(),
+        );
     }
     // There is an answer: the phases exist.
     let gouy = PerPlane::from_fn(|plane| eigenmode.planes[plane].gouy_folded.unwrap_or(0.0));
@@ -156,16 +163,9 @@ fn finesse(cavity: &Cavity, values: &[f64], polarisation: Polarisation) -> Optio
     (exists && finesse.is_finite()).then_some(finesse)
 }
 
-fn cautions(cavity: &Cavity, finesse: Option<f64>) -> Vec<String> {
+fn cautions(cavity: &Cavity) -> Vec<String> {
     let mut cautions = cavity.cautions().to_vec();
     cautions.extend(without_group_index(cavity));
-    if finesse.is_none() {
-        cautions.push(
-            "nothing is written of any loss: there is no linewidth, and modes within 1 % of the \
-             free spectral range count as near"
-                .into(),
-        );
-    }
     cautions
 }
 

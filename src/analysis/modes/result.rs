@@ -209,7 +209,12 @@ pub struct WayOut {
     /// 1/R or 1/f then.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub to_per_m: Option<f64>,
-    /// Whether that is within the quantity's own limits; none where it has none.
+    /// How far it may go on from there until some mode comes too near again, or the search ends.
+    pub until: Option<f64>,
+    /// The same as 1/R or 1/f.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub until_per_m: Option<f64>,
+    /// Whether `to` is within the quantity's own limits; none where it has none.
     pub within_limits: Option<bool>,
     /// The lesser margin of the planes then.
     pub margin: f64,
@@ -227,9 +232,9 @@ pub struct WayOut {
     /// How it is written.
     #[serde(skip)]
     pub kind: Kind,
-    /// Its value kept: 1/R for a radius.
+    /// `from`, `to` and `until` as kept: 1/R for a radius.
     #[serde(skip)]
-    pub kept: [f64; 2],
+    pub kept: [f64; 3],
 }
 
 /// A stretch of values of one quantity over which the wanted mode clearance holds.
@@ -249,6 +254,9 @@ pub struct Window {
     pub to_per_m: Option<f64>,
     /// Whether the value now lies within.
     pub holds_nominal: bool,
+    /// Whether it is all that was searched: the quantity's limits, or a tenth of its value to
+    /// either side.
+    pub whole: bool,
     /// How the quantity is written.
     #[serde(skip)]
     pub kind: Kind,

@@ -90,6 +90,7 @@ fn along(
             to: written_to,
             from_per_m: entry.is_reciprocal().then_some(kept[0]),
             to_per_m: entry.is_reciprocal().then_some(kept[1]),
+            whole: kept == [from, to],
             holds_nominal: (kept[0]..=kept[1]).contains(&nominal),
             kind: entry.kind,
             kept,
@@ -98,13 +99,13 @@ fn along(
     search.spent
 }
 
-/// The first value ahead at which the modes are far enough, from stretches in the order in which
+/// The first stretch of values ahead over which the modes are far enough, nearer end first, from stretches in the order in which
 /// they are met.
 fn way<'s>(
     stretches: impl Iterator<Item = &'s Stretch>,
     nominal: f64,
     direction: f64,
-) -> Option<f64> {
+) -> Option<[f64; 2]> {
     let ends = |stretch: &Stretch| match direction > 0.0 {
         true => (stretch.from, stretch.to),
         false => (stretch.to, stretch.from),
@@ -116,7 +117,10 @@ fn way<'s>(
         // A cavity on the edge of stability begins where there is no mode.
         .take_while(|(index, stretch)| *index == 0 || stretch.state != State::Empty)
         .find(|(_, stretch)| stretch.state == State::Clear)
-        .map(|(_, stretch)| ends(stretch).0)
+        .map(|(_, stretch)| {
+            let (near, far) = ends(stretch);
+            [near, far]
+        })
 }
 
 fn way_out(
@@ -124,7 +128,7 @@ fn way_out(
     search: &mut Search<'_>,
     slot: Slot,
     limits: Option<[f64; 2]>,
-    at: f64,
+    [at, until]: [f64; 2],
 ) -> Option<WayOut> {
     let entry = cavity.book().entry(slot);
     let sample = search.sample(at);
@@ -135,14 +139,16 @@ fn way_out(
         highest: cavity.highest_order,
     };
     let nearest = comb.clearance(comb.nearest(0.0, 1, |_, _| true)?);
-    let kept = [entry.value, at];
-    let [from, to] = written(entry, kept);
+    let kept = [entry.value, at, until];
+    let [from, to, until] = written(entry, kept);
     Some(WayOut {
         quantity: entry.address.clone(),
         from,
         to,
         from_per_m: entry.is_reciprocal().then_some(kept[0]),
         to_per_m: entry.is_reciprocal().then_some(kept[1]),
+        until,
+        until_per_m: entry.is_reciprocal().then_some(kept[2]),
         within_limits: limits.map(|[low, high]| (low..=high).contains(&at)),
         margin: sample.margin,
         mode_clearance_linewidths: nearest.linewidths,
@@ -156,7 +162,7 @@ fn way_out(
 }
 
 /// The values as written: radii and focal lengths instead of their reciprocals, none for flat.
-fn written(entry: &Entry, kept: [f64; 2]) -> [Option<f64>; 2] {
+fn written<const N: usize>(entry: &Entry, kept: [f64; N]) -> [Option<f64>; N] {
     kept.map(|x| {
         if entry.is_reciprocal() {
             (x != 0.0).then(|| 1.0 / x)

@@ -1,12 +1,12 @@
 //! The modes as a picture: a stick for every mode over one free spectral range.
 
-use super::{is_clear, verdict_line, wanted};
-use crate::analysis::modes::{Modes, SURVIVES};
+use super::{is_clear, name, verdict_line, wanted};
+use crate::analysis::modes::{Mode, Modes, SURVIVES};
 use crate::analysis::spectrum;
 use crate::report::chart::{Across, Chart, Layer, Meaning, Panel, Range, Reference, Stick};
 use crate::report::describe::check::frequency;
 use crate::report::figure::{Axis, Stroke};
-use crate::report::number::{FREQUENCIES, NUMBERS, plain, significant};
+use crate::report::number::{FREQUENCIES, NUMBERS, common, plain, significant};
 
 /// Orders whose sticks are named.
 const NAMED: usize = 12;
@@ -31,7 +31,7 @@ pub fn describe(modes: &Modes) -> Chart {
             across: Across::X,
             at: spectrum::in_one_range(sideband.sideband_hz / modes.fsr_hz) * modes.fsr_hz,
             meaning: Meaning::Guide,
-            label: format!("{sign}{}", frequency(sideband.sideband_hz.abs())),
+            label: format!("{sign}{}", written(sideband.sideband_hz.abs())),
         }));
     }
     layers.push(Layer::Sticks(sticks(modes)));
@@ -56,10 +56,9 @@ pub fn describe(modes: &Modes) -> Chart {
             None => format!("{word}: {}", verdict_line(modes)),
         },
         particulars: format!(
-            "{} cavity, {} nm, {} light, FSR {}{finesse}",
+            "{} cavity, {} nm, FSR {}{finesse}",
             modes.form,
             plain(modes.wavelength_m * 1e9, 6),
-            modes.polarisation,
             frequency(modes.fsr_hz),
         ),
         columns: 1,
@@ -69,7 +68,7 @@ pub fn describe(modes: &Modes) -> Chart {
             y: Some(Axis::between(
                 "height, less for higher orders",
                 0.0,
-                1.15,
+                1.2,
                 &NUMBERS,
             )),
             layers,
@@ -79,14 +78,22 @@ pub fn describe(modes: &Modes) -> Chart {
     }
 }
 
+/// A frequency that somebody wrote, without zeros at the end.
+fn written(hertz: f64) -> String {
+    let scale = common([hertz], &FREQUENCIES, 1.0);
+    format!("{} {}", plain(hertz / scale.size, 6), scale.symbol)
+}
+
 fn sticks(modes: &Modes) -> Vec<Stick> {
     let height = |order: usize| 1.0 - 0.85 * order as f64 / (modes.highest_order as f64 + 1.0);
     let mut sticks = vec![Stick {
         at: 0.0,
         height: height(0),
         stroke: Stroke::Solid,
-        label: "TEM_00".into(),
+        label: "0".into(),
     }];
+    let nearest = modes.mode_clearance.as_ref();
+    let is_nearest = |mode: &Mode| nearest.is_some_and(|at| (at.m, at.n) == (mode.m, mode.n));
     let mut drawn: Vec<(usize, f64)> = Vec::new();
     for mode in &modes.modes {
         let is_drawn = drawn
@@ -104,7 +111,9 @@ fn sticks(modes: &Modes) -> Vec<Stick> {
             at: mode.offset_hz,
             height: height(mode.order),
             stroke: if lost { Stroke::Dotted } else { Stroke::Solid },
-            label: if is_first && mode.order <= NAMED {
+            label: if mode.offset_hz.abs() < modes.apart_hz || is_nearest(mode) {
+                name(mode.m, mode.n)
+            } else if is_first && mode.order <= NAMED {
                 mode.order.to_string()
             } else {
                 String::new()
@@ -115,7 +124,10 @@ fn sticks(modes: &Modes) -> Vec<Stick> {
 }
 
 fn notes(modes: &Modes) -> Vec<String> {
-    let mut notes = vec!["numbers are the orders m + n, each written at its TEM_m0".into()];
+    let mut notes = vec![
+        "numbers are the orders m + n, each written at its TEM_m0; modes that are near are named"
+            .into(),
+    ];
     let is_lost = |loss: Option<f64>| loss.is_some_and(|loss| loss > SURVIVES);
     if modes.modes.iter().any(|mode| is_lost(mode.clip_loss)) {
         notes.push("dotted: more than 10 % lost in a round trip by clipping".into());

@@ -145,10 +145,9 @@ fn summary(document: &mut Document, modes: &Modes) {
         _ => String::new(),
     };
     document.text(format!(
-        "{} cavity, {} nm, {} light, FSR {}{lines}",
+        "{} cavity, {} nm, FSR {}{lines}",
         modes.form,
         plain(modes.wavelength_m * 1e9, 6),
-        modes.polarisation,
         frequency(modes.fsr_hz),
     ));
     let horizontal = if modes.tangential_is_horizontal {
@@ -157,8 +156,7 @@ fn summary(document: &mut Document, modes: &Modes) {
         "vertical"
     };
     document.text(format!(
-        "TEM_mn has m nodes in the tangential plane, here the {horizontal} one, and n in the \
-         sagittal"
+        "TEM_mn: m nodes in the tangential plane, here the {horizontal}, n in the sagittal"
     ));
     if let (Some(apart), Some(finesse)) = (modes.apart_linewidths, modes.finesse) {
         document.text(meaning(apart, finesse));
@@ -209,7 +207,9 @@ fn sent(document: &mut Document, modes: &Modes) {
     let parasitic = match modes.parasitic {
         Some(ratio) => format!(
             "; on resonance the other modes together hold {} of its power",
-            if ratio < 1e-3 {
+            if ratio < 1e-8 {
+                "less than 0.01 ppm".into()
+            } else if ratio < 1e-3 {
                 format!("{} ppm", significant(ratio * 1e6, 3))
             } else {
                 percent(ratio)
@@ -250,7 +250,8 @@ fn other_polarisation(document: &mut Document, modes: &Modes) {
         _ => String::new(),
     };
     document.text(format!(
-        "{} light has its comb {comb}{lines}; of its modes {}.",
+        "The figures are for {} light. {} light has its comb {comb}{lines}; of its modes {}.",
+        modes.polarisation,
         other.polarisation,
         place(modes, &other.nearest)
     ));
@@ -288,7 +289,7 @@ const MOST_ORDERS: usize = 20;
 
 fn by_order(document: &mut Document, modes: &Modes) {
     document.heading("The nearest mode of every order");
-    let scale = column(modes.by_order.iter().map(|order| order.offset_hz));
+    let scale = column(modes, modes.by_order.iter().map(|order| order.offset_hz));
     let lines = modes.finesse.is_some();
     let clips = modes.by_order.iter().any(|order| order.clip_loss.is_some());
     let mut titles = vec![
@@ -305,7 +306,12 @@ fn by_order(document: &mut Document, modes: &Modes) {
     let titles: Vec<&str> = titles.iter().map(String::as_str).collect();
     let mut table = Table::new(&titles);
     for order in modes.by_order.iter().take(MOST_ORDERS) {
-        let cell = |x: Option<f64>| x.map_or("–".into(), |x| significant(x, 3));
+        let is_none = order.offset_hz.abs() < NONE * modes.fsr_hz;
+        let cell = |x: Option<f64>| match x {
+            Some(_) if is_none => "0".into(),
+            Some(x) => significant(x, 3),
+            None => "–".into(),
+        };
         let mut row = vec![
             order.order.to_string(),
             name(order.m, order.n),
@@ -338,9 +344,16 @@ fn percent_lost(share: f64) -> String {
     }
 }
 
-/// The unit of a column of offsets.
-fn column(offsets: impl IntoIterator<Item = f64>) -> Scale {
-    common(offsets, &FREQUENCIES, 1.0)
+/// The unit of a column of offsets; that of the free spectral range where all of them are nothing.
+fn column(modes: &Modes, offsets: impl IntoIterator<Item = f64>) -> Scale {
+    let mut sizes: Vec<f64> = offsets
+        .into_iter()
+        .filter(|offset| offset.abs() > NONE * modes.fsr_hz)
+        .collect();
+    if sizes.is_empty() {
+        sizes.push(modes.fsr_hz);
+    }
+    common(sizes, &FREQUENCIES, 1.0)
 }
 
 /// A signed offset in a column; what is none but for rounding is zero.

@@ -1,6 +1,6 @@
 //! Modes that lie too near, and what the sidebands meet.
 
-use super::{column, name, offset, wanted};
+use super::{NONE, column, name, offset, wanted};
 use crate::analysis::modes::{Coincidence, Modes};
 use crate::report::describe::check::frequency;
 use crate::report::document::{Block, Document, Table};
@@ -10,7 +10,7 @@ use crate::report::number::significant;
 const TOGETHER: f64 = 1e-6;
 /// Most rows of a table, and most names in a row.
 const MOST_ROWS: usize = 16;
-const MOST_NAMES: usize = 4;
+const MOST_NAMES: usize = 3;
 
 /// Modes nearer to the fundamental than what is wanted, with what makes them so.
 pub(super) fn coincidences(document: &mut Document, modes: &Modes) {
@@ -31,14 +31,17 @@ pub(super) fn coincidences(document: &mut Document, modes: &Modes) {
             None => rows.push(vec![found]),
         }
     }
-    let scale = column(modes.coincidences.iter().map(|found| found.offset_hz));
+    let scale = column(
+        modes,
+        modes.coincidences.iter().map(|found| found.offset_hz),
+    );
     let offsets = format!("offset\n{}", scale.symbol);
     let mut titles = vec!["<modes", offsets.as_str()];
     let lines = modes.finesse.is_some();
     if lines {
         titles.push("line-\nwidths");
     }
-    titles.push("<because from order to order it is nearly");
+    titles.push("<as orders lie\napart by nearly");
     let mut table = Table::new(&titles);
     for row in rows.iter().take(MOST_ROWS) {
         let first = row[0];
@@ -55,14 +58,12 @@ pub(super) fn coincidences(document: &mut Document, modes: &Modes) {
         };
         let mut cells = vec![names, offset(first.offset_hz, scale, modes)];
         if lines {
-            let count = first.offset_linewidths.map(f64::abs);
-            cells.push(count.map_or("–".into(), |count| {
-                if count < 1e-6 {
-                    "0".into()
-                } else {
-                    significant(count, 3)
-                }
-            }));
+            let is_none = first.offset_hz.abs() < NONE * modes.fsr_hz;
+            cells.push(match first.offset_linewidths {
+                Some(_) if is_none => "0".into(),
+                Some(count) => significant(count.abs(), 3),
+                None => "–".into(),
+            });
         }
         // The cause of a row is that of its modes together: the planes that any of them needs.
         let with_both = row.iter().find(|found| found.m > 0 && found.n > 0);
@@ -83,16 +84,16 @@ fn cause(found: &Coincidence) -> String {
     };
     let text = |fraction: crate::analysis::modes::Fraction| {
         if fraction.p == 0 {
-            "a whole FSR".to_string()
+            "0 or 1 FSR".to_string()
         } else {
             format!("{}/{} FSR", fraction.p, fraction.q)
         }
     };
     match (fractions.tangential, fractions.sagittal) {
         (Some(t), Some(s)) if t == s => text(t),
-        (Some(t), Some(s)) => format!("{} tangential, {} sagittal", text(t), text(s)),
-        (Some(t), None) => format!("{} tangential", text(t)),
-        (None, Some(s)) => format!("{} sagittal", text(s)),
+        (Some(t), Some(s)) => format!("{} t, {} s", text(t), text(s)),
+        (Some(t), None) => format!("{} t", text(t)),
+        (None, Some(s)) => format!("{} s", text(s)),
         (None, None) => "–".into(),
     }
 }
@@ -103,7 +104,10 @@ pub(super) fn sidebands(document: &mut Document, modes: &Modes) {
         return;
     }
     document.heading("Sidebands of a resonant carrier, and the mode nearest to each");
-    let scale = column(modes.sidebands.iter().map(|sideband| sideband.offset_hz));
+    let scale = column(
+        modes,
+        modes.sidebands.iter().map(|sideband| sideband.offset_hz),
+    );
     let offsets = format!("mode − sideband\n{}", scale.symbol);
     let mut titles = vec!["sideband", "<nearest", offsets.as_str()];
     let lines = modes.finesse.is_some();

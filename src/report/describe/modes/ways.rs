@@ -1,6 +1,6 @@
 //! How to move out, and where everything keeps its distance.
 
-use super::{is_clear, linewidths, name, short_frequency, wanted};
+use super::{is_clear, linewidths, short_frequency, wanted};
 use crate::analysis::modes::{Modes, Window};
 use crate::quantity::Kind;
 use crate::report::describe::check::{change, value};
@@ -31,17 +31,18 @@ pub(super) fn ways_out(document: &mut Document, modes: &Modes) {
         "<quantity",
         "now",
         "then",
+        "until",
         "change",
         "<within\nlimits",
         "margin",
-        "<nearest\nthen",
     ]);
     for way in modes.ways_out.iter().take(MOST_ROWS) {
-        let [from, to] = way.kept;
+        let [from, to, until] = way.kept;
         table.rows.push(vec![
             way.quantity.clone(),
             value(from, way.kind),
             value(to, way.kind),
+            value(until, way.kind),
             change(from, to, way.kind),
             match way.within_limits {
                 Some(true) => "yes".into(),
@@ -49,7 +50,6 @@ pub(super) fn ways_out(document: &mut Document, modes: &Modes) {
                 None => "–".into(),
             },
             significant(way.margin, 3),
-            name(way.m, way.n),
         ]);
     }
     document.push(Block::Table(table));
@@ -60,7 +60,8 @@ pub(super) fn ways_out(document: &mut Document, modes: &Modes) {
             None => short_frequency(way.mode_clearance_hz),
         };
         document.aside(format!(
-            "Each is the least change: the clearance there is {clearance}, and grows beyond."
+            "Each is the least change: the clearance is just {clearance} there and at least that up \
+             to the value under \"until\"."
         ));
     }
 }
@@ -74,14 +75,29 @@ pub(super) fn windows(document: &mut Document, modes: &Modes) {
         "Where each alone, within its limits, keeps {}",
         wanted(modes)
     ));
+    let whole: Vec<&str> = modes
+        .windows
+        .iter()
+        .filter(|window| window.whole)
+        .map(|window| window.quantity.as_str())
+        .collect();
+    if !whole.is_empty() {
+        document.text(format!("Over all of them: {}.", shortened(&whole)));
+    }
+    let narrow: Vec<&Window> = modes
+        .windows
+        .iter()
+        .filter(|window| !window.whole)
+        .collect();
+    if narrow.is_empty() {
+        return;
+    }
     let mut table = Table::new(&["<quantity", "from", "to", "<holds it now"]);
     let mut quantities: Vec<&str> = Vec::new();
     let mut hidden = 0;
-    for window in &modes.windows {
-        let before = modes
-            .windows
+    for (index, window) in narrow.iter().enumerate() {
+        let before = narrow[..index]
             .iter()
-            .take_while(|other| !std::ptr::eq(*other, window))
             .filter(|other| other.quantity == window.quantity)
             .count();
         if before >= MOST_WINDOWS || table.rows.len() >= MOST_ROWS {
@@ -90,15 +106,15 @@ pub(super) fn windows(document: &mut Document, modes: &Modes) {
         }
         let repeated = quantities.contains(&window.quantity.as_str());
         quantities.push(&window.quantity);
-        let [low, high] = rising(window);
+        let [low, high] = ends(window);
         table.rows.push(vec![
             if repeated {
                 String::new()
             } else {
                 window.quantity.clone()
             },
-            value(low, window.kind),
-            value(high, window.kind),
+            low,
+            high,
             if window.holds_nominal { "yes" } else { "no" }.into(),
         ]);
     }
@@ -108,14 +124,32 @@ pub(super) fn windows(document: &mut Document, modes: &Modes) {
     }
 }
 
-/// The ends in the order of the values as written: of a radius the greater curvature is first.
-fn rising(window: &Window) -> [f64; 2] {
+/// The ends in the order of the values as written: of a radius the greater curvature is first, and
+/// to either side of flat the sense is said in words.
+fn ends(window: &Window) -> [String; 2] {
     let [low, high] = window.kept;
-    let is_radius = matches!(window.kind, Kind::Radius | Kind::Face | Kind::Focal);
-    if is_radius && low * high > 0.0 {
-        [high, low]
+    if window.kind.is_reciprocal() && low * high > 0.0 {
+        return [high, low].map(|x| value(x, window.kind));
+    }
+    if window.kind == Kind::Radius && low < 0.0 && high > 0.0 {
+        let radius = |x: f64| value(1.0 / x.abs(), Kind::Length);
+        return [
+            format!("{} convex", radius(low)),
+            format!("{} concave", radius(high)),
+        ];
+    }
+    [low, high].map(|x| value(x, window.kind))
+}
+
+/// Names in a sentence, the first few of them.
+fn shortened(names: &[&str]) -> String {
+    const SHOWN: usize = 12;
+    let more = names.len().saturating_sub(SHOWN);
+    let shown = names[..names.len() - more].join(", ");
+    if more > 0 {
+        format!("{shown} and {more} more")
     } else {
-        [low, high]
+        shown
     }
 }
 

@@ -228,7 +228,7 @@ mod tests {
         };
         // Far enough out to hold all of order 4.
         const ALL: f64 = 6.0;
-        let rule = gauss_legendre(120);
+        let rule = gauss_legendre(240);
         let height = |rim: Rim, x: f64| match rim {
             Rim::Round(a) => (a * a - x * x).sqrt(),
             Rim::Rectangle([_, b]) => b,

@@ -13,8 +13,8 @@ mod search;
 mod ways_out;
 
 pub use result::{
-    Clearance, Coincidence, Fraction, Mode, Modes, Order, OtherPolarisation, Sideband, WayOut,
-    Window,
+    Clearance, Coincidence, Fraction, Fractions, Mode, Modes, Order, OtherPolarisation, Sideband,
+    WayOut, Window,
 };
 
 use super::airy;
@@ -67,8 +67,8 @@ pub fn modes(cavity: &Cavity, apart: f64, free: &[Slot]) -> Modes {
         highest_order: cavity.highest_order,
         apart_linewidths: finesse.map(|_| apart),
         apart_hz: aim.turns(finesse) * fsr,
-        gouy_folded_rad: PerPlane::both(None).into(),
-        spacing_hz: PerPlane::both(None).into(),
+        gouy_folded_rad: None,
+        spacing_hz: None,
         polarisation: cavity.polarisation.name(),
         other_polarisation_offset_hz: None,
         other_polarisation: None,
@@ -107,11 +107,14 @@ pub fn modes(cavity: &Cavity, apart: f64, free: &[Slot]) -> Modes {
         finesse,
         highest: cavity.highest_order,
     };
-    found.gouy_folded_rad = gouy.map(Some).into();
+    found.gouy_folded_rad = Some(gouy.into());
     let folded = |turns: f64| super::spectrum::in_one_range(turns) * fsr;
-    found.spacing_hz = comb.spacing.map(|turns| Some(folded(turns))).into();
+    found.spacing_hz = Some(comb.spacing.map(folded).into());
     let nearest = comb.nearest(0.0, 1, |_, _| true);
     found.modes = comb.modes();
+    if finesse.is_none() {
+        missing(&mut found, NO_LOSS);
+    }
     found.mode_clearance = nearest.map(|nearest| comb.clearance(nearest));
     found.by_order = comb.by_order();
     found.sidebands = comb.sidebands(&cavity.sidebands);
@@ -193,6 +196,9 @@ fn other_polarisation(cavity: &Cavity, values: &[f64], comb: Comb, found: &mut M
     });
 }
 
+/// Why there is no linewidth.
+const NO_LOSS: &str = "nothing is written of any loss";
+
 /// Why nothing is known of the beam of a cavity in which every beam repeats itself.
 const NO_BEAM: &str = "every beam repeats itself here, and the openings alone set the mode";
 
@@ -220,8 +226,8 @@ fn clipped(
     };
     match &losses {
         Ok(Some(losses)) => note_losses(found, losses),
-        Ok(None) => give_reason(found, "no opening is given"),
-        Err(why) => give_reason(found, why),
+        Ok(None) => missing(found, "no opening is given"),
+        Err(why) => missing(found, why),
     }
 }
 
@@ -251,8 +257,7 @@ fn sent(
     let shares = match shares {
         Ok(shares) => shares,
         Err(why) => {
-            give_reason(found, why);
-            found.why = Some(why.into());
+            missing(found, why);
             return;
         }
     };
@@ -272,11 +277,8 @@ fn sent(
     found.parasitic = resonant
         .map(|sum| sum / fundamental)
         .filter(|ratio| ratio.is_finite());
-    if found.parasitic.is_none() {
-        found.why = Some(match comb.finesse {
-            None => "nothing is written of any loss".into(),
-            Some(_) => "the source has no power in the fundamental".into(),
-        });
+    if comb.finesse.is_some() && found.parasitic.is_none() {
+        add_reason(&mut found.why, "the source has no power in the fundamental");
     }
     let quality = cavity.source.as_ref().map(|source| source.m2.of(values));
     if quality.is_some_and(|m2| m2 > 1.0) {
@@ -288,12 +290,19 @@ fn sent(
     }
 }
 
-/// Says of every mode why a value is missing, beside what else is.
-fn give_reason(found: &mut Modes, why: &str) {
+/// Says of the whole and of every mode why a value is missing, beside what else is.
+fn missing(found: &mut Modes, why: &str) {
+    add_reason(&mut found.why, why);
     for mode in &mut found.modes {
-        mode.why = match mode.why.take() {
-            Some(other) if other != why => Some(format!("{other}; {why}")),
-            _ => Some(why.into()),
-        };
+        add_reason(&mut mode.why, why);
     }
+}
+
+/// Adds why a value is missing to other such reasons.
+fn add_reason(reasons: &mut Option<String>, why: &str) {
+    *reasons = match reasons.take() {
+        Some(others) if others.contains(why) => Some(others),
+        Some(others) => Some(format!("{others}; {why}")),
+        None => Some(why.into()),
+    };
 }

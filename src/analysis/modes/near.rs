@@ -1,7 +1,7 @@
 //! Which modes lie near the fundamental or near a sideband, and why.
 
-use super::result::{Clearance, Coincidence, Fraction, Mode, Order, Sideband};
-use crate::analysis::check::Planes;
+use super::NO_LOSS;
+use super::result::{Clearance, Coincidence, Fraction, Fractions, Mode, Order, Sideband};
 use crate::analysis::spectrum;
 use crate::optics::PerPlane;
 
@@ -11,6 +11,10 @@ const SAME: f64 = 1e-9;
 
 /// The largest denominator of a fraction that counts as a cause: more would find one everywhere.
 const LARGEST_DENOMINATOR: usize = 12;
+
+/// What is farther from a fraction, in free spectral ranges, is not caused by it, whatever is
+/// wanted.
+const MOST_OFF: f64 = 0.05;
 
 /// The comb of modes of one polarisation.
 #[derive(Clone, Copy, Debug)]
@@ -29,6 +33,11 @@ impl Comb {
     /// Every m and n from the given order on, by order and then by falling m.
     fn each(&self, from: usize) -> impl Iterator<Item = (usize, usize)> + use<> {
         (from..=self.highest).flat_map(|order| (0..=order).map(move |n| (order - n, n)))
+    }
+
+    /// Why counts of linewidths are missing.
+    fn why(&self) -> Option<&'static str> {
+        self.finesse.is_none().then_some(NO_LOSS)
     }
 
     fn linewidths(&self, turns: f64) -> Option<f64> {
@@ -85,6 +94,7 @@ impl Comb {
             offset_hz: turns * self.fsr,
             m,
             n,
+            why: self.why(),
         }
     }
 
@@ -101,6 +111,7 @@ impl Comb {
                     linewidths: self.linewidths(turns.abs()),
                     suppression_db: self.suppression_db(turns),
                     clip_loss: None,
+                    why: self.why(),
                 })
             })
             .collect()
@@ -120,6 +131,7 @@ impl Comb {
                     n,
                     offset_hz: turns * self.fsr,
                     offset_linewidths: self.linewidths(turns),
+                    why: self.why(),
                 })
             })
             .collect()
@@ -127,7 +139,7 @@ impl Comb {
 
     /// The modes within a distance of the fundamental, in free spectral ranges.
     pub(super) fn coincidences(&self, apart: f64) -> Vec<Coincidence> {
-        let fractions = Planes {
+        let fractions = Fractions {
             tangential: fraction(self.spacing.tangential, apart),
             sagittal: fraction(self.spacing.sagittal, apart),
         };
@@ -139,7 +151,8 @@ impl Comb {
                     n,
                     offset_hz: turns * self.fsr,
                     offset_linewidths: self.linewidths(turns),
-                    fractions: cause(&fractions, m, n),
+                    fractions: cause(fractions, m, n),
+                    why: self.why(),
                 })
             })
             .collect()
@@ -149,6 +162,7 @@ impl Comb {
 /// The fraction of the least denominator q that a spacing is so nearly that order q itself lies
 /// within the given distance of the fundamental.
 fn fraction(spacing: f64, apart: f64) -> Option<Fraction> {
+    let apart = apart.min(MOST_OFF);
     (1..=LARGEST_DENOMINATOR).find_map(|q| {
         let turns = spacing * q as f64;
         let p = turns.round();
@@ -161,16 +175,12 @@ fn fraction(spacing: f64, apart: f64) -> Option<Fraction> {
 
 /// The fractions in the planes in which a mode has nodes, if with them it would lie exactly on the
 /// fundamental.
-fn cause(
-    fractions: &Planes<Option<Fraction>>,
-    m: usize,
-    n: usize,
-) -> Option<Planes<Option<Fraction>>> {
+fn cause(fractions: Fractions, m: usize, n: usize) -> Option<Fractions> {
     const NONE: Fraction = Fraction { p: 0, q: 1 };
     let t = if m > 0 { fractions.tangential? } else { NONE };
     let s = if n > 0 { fractions.sagittal? } else { NONE };
     let whole = (m * t.p * s.q + n * s.p * t.q).is_multiple_of(t.q * s.q);
-    whole.then(|| Planes {
+    whole.then(|| Fractions {
         tangential: (m > 0).then_some(t),
         sagittal: (n > 0).then_some(s),
     })

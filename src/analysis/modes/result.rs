@@ -40,9 +40,9 @@ pub struct Modes {
     /// range.
     pub apart_hz: f64,
     /// Gouy phase of a round trip modulo 2π, flips counted.
-    pub gouy_folded_rad: Planes<Option<f64>>,
+    pub gouy_folded_rad: Option<Planes<f64>>,
     /// Spacing of neighbouring orders, folded into half a free spectral range to either side.
-    pub spacing_hz: Planes<Option<f64>>,
+    pub spacing_hz: Option<Planes<f64>>,
     /// `s` or `p`.
     pub polarisation: &'static str,
     /// Where the comb of the other polarisation lies; none where there is no answer.
@@ -92,8 +92,10 @@ pub struct OtherPolarisation {
     /// Where its fundamental lies.
     pub offset_hz: f64,
     /// Its finesse.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub finesse: Option<f64>,
     /// Its linewidth.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub linewidth_hz: Option<f64>,
     /// Its mode nearest to the fundamental of the cavity's own polarisation.
     pub nearest: Clearance,
@@ -134,6 +136,9 @@ pub struct Clearance {
     pub m: usize,
     /// Nodes in the sagittal plane.
     pub n: usize,
+    /// Why a value is missing.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub why: Option<&'static str>,
 }
 
 /// The mode of an order that lies nearest to the fundamental.
@@ -151,8 +156,13 @@ pub struct Order {
     pub linewidths: Option<f64>,
     /// How much less power it holds at the fundamental's resonance than at its own.
     pub suppression_db: Option<f64>,
-    /// The least loss by clipping of any mode of the order, in a round trip.
+    /// The least loss by clipping of any mode of the order, in a round trip; left out where it is
+    /// not known.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub clip_loss: Option<f64>,
+    /// Why a value is missing.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub why: Option<&'static str>,
 }
 
 /// A sideband and the mode nearest to it, the fundamental included.
@@ -168,6 +178,9 @@ pub struct Sideband {
     pub offset_hz: f64,
     /// The same in linewidths.
     pub offset_linewidths: Option<f64>,
+    /// Why a value is missing.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub why: Option<&'static str>,
 }
 
 /// A mode too near to the fundamental.
@@ -181,8 +194,24 @@ pub struct Coincidence {
     pub offset_hz: f64,
     /// The same in linewidths.
     pub offset_linewidths: Option<f64>,
-    /// The fractions of the free spectral range that the spacings nearly are, where they are why.
-    pub fractions: Option<Planes<Option<Fraction>>>,
+    /// The fractions of the free spectral range that the spacings nearly are, where they are why;
+    /// left out where they are not.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub fractions: Option<Fractions>,
+    /// Why a value is missing.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub why: Option<&'static str>,
+}
+
+/// Fractions of the free spectral range, of the planes in which a mode has nodes.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+pub struct Fractions {
+    /// Of the tangential plane.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub tangential: Option<Fraction>,
+    /// Of the sagittal plane.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub sagittal: Option<Fraction>,
 }
 
 /// A fraction p/q.
@@ -199,9 +228,11 @@ pub struct Fraction {
 pub struct WayOut {
     /// The quantity's address.
     pub quantity: String,
-    /// Its value now, as written; none where it is flat.
+    /// Its value now, as written; left out where it is flat.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub from: Option<f64>,
     /// Its value then.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub to: Option<f64>,
     /// 1/R or 1/f now; left out for anything else.
     #[serde(skip_serializing_if = "Option::is_none")]
@@ -210,15 +241,18 @@ pub struct WayOut {
     #[serde(skip_serializing_if = "Option::is_none")]
     pub to_per_m: Option<f64>,
     /// How far it may go on from there until some mode comes too near again, or the search ends.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub until: Option<f64>,
     /// The same as 1/R or 1/f.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub until_per_m: Option<f64>,
-    /// Whether `to` is within the quantity's own limits; none where it has none.
+    /// Whether `to` is within the quantity's own limits; left out where it has none.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub within_limits: Option<bool>,
     /// The lesser margin of the planes then.
     pub margin: f64,
-    /// The mode clearance then.
+    /// The mode clearance then; left out where there is no linewidth.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub mode_clearance_linewidths: Option<f64>,
     /// The same as a difference of frequencies.
     pub mode_clearance_hz: f64,
@@ -242,9 +276,11 @@ pub struct WayOut {
 pub struct Window {
     /// The quantity's address.
     pub quantity: String,
-    /// One end, as written; none where it is flat.
+    /// One end, as written; left out where it is flat.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub from: Option<f64>,
     /// The other end.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub to: Option<f64>,
     /// The lesser 1/R or 1/f; left out for anything else.
     #[serde(skip_serializing_if = "Option::is_none")]

@@ -22,6 +22,8 @@ const CELLS: usize = 64;
 const HALVINGS: usize = 14;
 /// Looks at a mode over a stretch that are spent on one quantity before the ends alone decide.
 const BUDGET: usize = 20_000_000;
+/// What an evaluation of the cavity costs, in such looks.
+const SAMPLE: usize = 50;
 
 /// The distance that is wanted.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -90,7 +92,7 @@ pub(super) struct Search<'a> {
     aim: Aim,
     highest: usize,
     found: Vec<Stretch>,
-    /// Looks at a mode over a stretch, so far.
+    /// Looks at a mode over a stretch, so far, and what evaluations cost in them.
     pub(super) spent: usize,
 }
 
@@ -131,6 +133,7 @@ impl<'a> Search<'a> {
 
     /// The cavity with the quantity at a value.
     pub(super) fn sample(&mut self, at: f64) -> Sample {
+        self.spent += SAMPLE;
         self.values[self.slot.index()] = at;
         let book = self.cavity.book();
         book.follow_ties(&mut self.values);

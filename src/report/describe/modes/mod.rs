@@ -160,6 +160,12 @@ fn summary(document: &mut Document, modes: &Modes) {
     ));
     if let (Some(apart), Some(finesse)) = (modes.apart_linewidths, modes.finesse) {
         document.text(meaning(apart, finesse));
+        if !is_clear(modes) && places(modes) as f64 * 2.0 * apart > finesse {
+            document.text(
+                "At this finesse some of so many modes is nearly always that near: judge it by its \
+                 order, and by what the source sends into it.",
+            );
+        }
     }
     if let Some(surviving) = &modes.mode_clearance_surviving
         && modes
@@ -176,6 +182,15 @@ fn summary(document: &mut Document, modes: &Modes) {
     }
     sent(document, modes);
     other_polarisation(document, modes);
+}
+
+/// At how many places modes lie; what is nearer to each other than a millionth of a free spectral
+/// range is at one.
+fn places(modes: &Modes) -> usize {
+    let mut offsets: Vec<f64> = modes.modes.iter().map(|mode| mode.offset_hz).collect();
+    offsets.sort_by(f64::total_cmp);
+    offsets.dedup_by(|b, a| (*b - *a).abs() < 1e-6 * modes.fsr_hz);
+    offsets.len()
 }
 
 /// What a count of linewidths means for the light in a mode.
@@ -269,14 +284,13 @@ fn spectrum_strip(document: &mut Document, modes: &Modes) {
     if let Some(text) = left_out {
         document.aside(text);
     }
-    let spacing = |spacing: Option<f64>| spacing.map_or("–".into(), signed_frequency);
-    let (t, s) = (
-        spacing(modes.spacing_hz.tangential),
-        spacing(modes.spacing_hz.sagittal),
-    );
-    document.aside(format!(
-        "From order to order: {t} in the tangential plane, {s} in the sagittal."
-    ));
+    if let Some(spacing) = &modes.spacing_hz {
+        document.aside(format!(
+            "From order to order: {} in the tangential plane, {} in the sagittal.",
+            signed_frequency(spacing.tangential),
+            signed_frequency(spacing.sagittal)
+        ));
+    }
 }
 
 fn signed_frequency(hertz: f64) -> String {

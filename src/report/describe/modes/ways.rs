@@ -29,10 +29,9 @@ pub(super) fn ways_out(document: &mut Document, modes: &Modes) {
     }
     let mut table = Table::new(&[
         "<quantity",
-        "now",
+        "change",
         "then",
         "until",
-        "change",
         "<within\nlimits",
         "margin",
     ]);
@@ -40,10 +39,9 @@ pub(super) fn ways_out(document: &mut Document, modes: &Modes) {
         let [from, to, until] = way.kept;
         table.rows.push(vec![
             way.quantity.clone(),
-            value(from, way.kind),
-            value(to, way.kind),
-            value(until, way.kind),
             change(from, to, way.kind),
+            reading(to, from, way.kind),
+            reading(until, from, way.kind),
             match way.within_limits {
                 Some(true) => "yes".into(),
                 Some(false) => "no".into(),
@@ -82,7 +80,7 @@ pub(super) fn windows(document: &mut Document, modes: &Modes) {
         .map(|window| window.quantity.as_str())
         .collect();
     if !whole.is_empty() {
-        document.text(format!("Over all of them: {}.", shortened(&whole)));
+        document.text(format!("Throughout: {}.", shortened(&whole)));
     }
     let narrow: Vec<&Window> = modes
         .windows
@@ -124,6 +122,16 @@ pub(super) fn windows(document: &mut Document, modes: &Modes) {
     }
 }
 
+/// A value of a quantity; of a radius on the other side of flat than now, the sense is said in
+/// words.
+fn reading(x: f64, now: f64, kind: Kind) -> String {
+    if kind != Kind::Radius || x == 0.0 || x * now > 0.0 {
+        return value(x, kind);
+    }
+    let sense = if x > 0.0 { "concave" } else { "convex" };
+    format!("{} {sense}", value(1.0 / x.abs(), Kind::Length))
+}
+
 /// The ends in the order of the values as written: of a radius the greater curvature is first, and
 /// to either side of flat the sense is said in words.
 fn ends(window: &Window) -> [String; 2] {
@@ -131,14 +139,7 @@ fn ends(window: &Window) -> [String; 2] {
     if window.kind.is_reciprocal() && low * high > 0.0 {
         return [high, low].map(|x| value(x, window.kind));
     }
-    if window.kind == Kind::Radius && low < 0.0 && high > 0.0 {
-        let radius = |x: f64| value(1.0 / x.abs(), Kind::Length);
-        return [
-            format!("{} convex", radius(low)),
-            format!("{} concave", radius(high)),
-        ];
-    }
-    [low, high].map(|x| value(x, window.kind))
+    [low, high].map(|x| reading(x, 0.0, window.kind))
 }
 
 /// Names in a sentence, the first few of them.

@@ -58,7 +58,13 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         .iter()
         .map(|address| quantity(&cavity, address.trim()))
         .collect::<Result<Vec<Slot>, Answer>>()?;
-    let found = modes::modes(&cavity, typed.apart, &free);
+    let mut once = Vec::new();
+    for slot in free {
+        if !once.contains(&slot) {
+            once.push(slot);
+        }
+    }
+    let found = modes::modes(&cavity, typed.apart, &once);
     if let Some(target) = target {
         target.write(&describe::modes_chart(&found))?;
     }

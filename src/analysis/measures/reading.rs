@@ -175,7 +175,8 @@ impl<'a, T: Real> Reading<'a, T> {
 
     #[inline(always)]
     fn least(&self, part: usize, plane: Plane) -> T {
-        let mut least = self.arriving(part, plane).1.beta();
+        // Just inside: at a tilted face the beam outside is narrower.
+        let mut least = self.entered(part, plane).beta;
         for which in [0, 1] {
             if let Some((stretch, ray)) = self.stretch(part, which, plane) {
                 least = least.min(stretch.least_beta(ray.beam()));

@@ -224,6 +224,12 @@ fn clipped(
             .map(|nearest| comb.clearance(nearest)),
         Err(_) => None,
     };
+    if found.mode_clearance_surviving.is_none() && losses.is_ok() {
+        add_reason(
+            &mut found.why,
+            "every mode loses more than 10 % by clipping",
+        );
+    }
     match &losses {
         Ok(Some(losses)) => note_losses(found, losses),
         Ok(None) => missing(found, "no opening is given"),

@@ -145,7 +145,7 @@ impl<'a> Search<'a> {
             self.walk
                 .evaluate(&self.values, &mut self.workspace, |index, value, exists| {
                     if index == 0 {
-                        finesse = exists.then_some(value);
+                        finesse = exists.then_some(value).filter(|value| value.is_finite());
                     } else {
                         fsr = value;
                     }

@@ -139,6 +139,10 @@ fn way_out(
         highest: cavity.highest_order,
     };
     let nearest = comb.clearance(comb.nearest(0.0, 1, |_, _| true)?);
+    let is_finite = nearest.offset_hz.is_finite() && sample.margin.is_finite();
+    if !is_finite || !nearest.linewidths.is_none_or(f64::is_finite) {
+        return None;
+    }
     let kept = [entry.value, at, until];
     let [from, to, until] = written(entry, kept);
     Some(WayOut {

@@ -4,7 +4,9 @@ use divan::{Bencher, black_box};
 use modewright::analysis::check::check;
 use modewright::analysis::eigenmode::Eigenmode;
 use modewright::analysis::envelope::Envelope;
+use modewright::analysis::modes::{APART, modes};
 use modewright::analysis::ranges::stable_ranges;
+use modewright::analysis::spectrum::{Multiples, least_offset};
 use modewright::cavity::Cavity;
 use modewright::file;
 
@@ -71,4 +73,21 @@ fn whole_check(bencher: Bencher) {
 #[divan::bench]
 fn reading_the_file(bencher: Bencher) {
     bencher.bench_local(|| file::load("ring.toml", black_box(RING), &[]).is_ok());
+}
+
+#[divan::bench]
+fn offsets_and_clearance_to_order_12(bencher: Bencher) {
+    let cavity = ring();
+    let mode = Eigenmode::of(&cavity, &cavity.book().nominal());
+    let spacing = mode
+        .planes
+        .map(|plane| plane.gouy_folded.unwrap_or_default() / std::f64::consts::TAU);
+    let mut multiples = Multiples::default();
+    bencher.bench_local(|| least_offset(black_box(spacing), 12, &mut multiples));
+}
+
+#[divan::bench]
+fn whole_modes(bencher: Bencher) {
+    let cavity = ring();
+    bencher.bench_local(|| modes(black_box(&cavity), APART, &[]));
 }

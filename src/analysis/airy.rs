@@ -6,13 +6,18 @@
 
 use std::f64::consts::PI;
 
-use crate::cavity::{Cavity, Element, Form, SlabLoss, Slot, slab_crossing};
+use crate::cavity::{Cavity, Element, Form, Polarisation, SlabLoss, Slot, slab_crossing};
 use crate::numeric::Real;
 
 /// −ln ρ² = the sum of −ln of all power factors of one round trip; zero where nothing is lost.
 ///
 /// Formed as a sum of logarithms, so that a loss of a few parts per million keeps its digits.
-pub fn round_trip_attenuation<T: Real>(cavity: &Cavity, values: &[T]) -> T {
+/// `polarisation` is that of the light, which need not be the cavity's own.
+pub fn round_trip_attenuation<T: Real>(
+    cavity: &Cavity,
+    values: &[T],
+    polarisation: Polarisation,
+) -> T {
     let count = cavity.parts().len();
     let mut sum = T::constant(0.0);
     for (index, part) in cavity.parts().iter().enumerate() {
@@ -23,7 +28,7 @@ pub fn round_trip_attenuation<T: Real>(cavity: &Cavity, values: &[T]) -> T {
         };
         let attenuation = match &part.element {
             Element::Mirror(mirror) => {
-                let coating = mirror.coating(part.swapped, cavity.polarisation);
+                let coating = mirror.coating(part.swapped, polarisation);
                 if coating.is_unknown() {
                     continue;
                 }

@@ -5,6 +5,71 @@
 
 use std::f64::consts::{SQRT_2, TAU};
 
+use crate::cavity::{Cavity, Element, Opening, Part, slab_crossing};
+use crate::optics::Plane;
+
+/// The usable rim of an opening, in metres.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Rim {
+    /// A round hole of this radius.
+    Round(f64),
+    /// A slit of this half-width, and the plane it limits.
+    Slit(f64, Plane),
+    /// A rectangle of these half-widths in the tangential and the sagittal plane.
+    Rectangle([f64; 2]),
+}
+
+impl Rim {
+    /// The rim of a part, its usable share counted; none where no opening is given.
+    pub fn of(cavity: &Cavity, part: &Part, values: &[f64]) -> Option<Rim> {
+        let usable = 0.5 * part.clear;
+        Some(match part.opening? {
+            Opening::Round { diameter } => Rim::Round(usable * diameter.of(values)),
+            Opening::Hole { radius } => Rim::Round(radius.of(values)),
+            Opening::Slit { half_width, plane } => Rim::Slit(half_width.of(values), plane),
+            Opening::Rectangle { width, height } => {
+                let (across, up) = (usable * width.of(values), usable * height.of(values));
+                Rim::Rectangle(if cavity.tangential_is_horizontal() {
+                    [across, up]
+                } else {
+                    [up, across]
+                })
+            }
+        })
+    }
+
+    /// Share of a centred Gaussian beam outside, for its 1/e² radii on the surface, tangential and
+    /// sagittal.
+    pub fn loss(self, [t, s]: [f64; 2]) -> f64 {
+        match self {
+            Rim::Round(a) => round(a, t, s),
+            Rim::Slit(a, Plane::Tangential) => slit(a, t),
+            Rim::Slit(a, Plane::Sagittal) => slit(a, s),
+            Rim::Rectangle([a, b]) => rectangle(a, b, t, s),
+        }
+    }
+}
+
+/// Radii of a beam on the surface of a part that it meets at an angle, from those across the
+/// beam, tangential and sagittal; `at_exit` where the beam is inside a slab, before its exit.
+pub fn footprint(part: &Part, at_exit: bool, values: &[f64], radii: [f64; 2]) -> [f64; 2] {
+    let cosine = match &part.element {
+        Element::Mirror(mirror) => mirror.incidence.of(values).cos(),
+        Element::Slab(slab) => {
+            let crossing = slab_crossing(slab, part.before.phase(values), values);
+            if at_exit {
+                crossing.cos_to
+            } else {
+                crossing.cos_from
+            }
+        }
+        _ => 1.0,
+    };
+    let mut radii = radii;
+    radii[usize::from(part.swapped)] /= cosine;
+    radii
+}
+
 /// Share of the power outside a round hole of radius `a`, for 1/e² radii `x` and `y` of the spot
 /// in its plane; all in the same unit.
 ///

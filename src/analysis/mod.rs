@@ -9,6 +9,7 @@ pub mod leaving;
 pub mod lengths;
 pub mod materials;
 pub mod measures;
+pub mod modes;
 pub mod profile;
 pub mod ranges;
 pub mod spectrum;

@@ -4,7 +4,7 @@
 //! spectral range to either side; ψ is the Gouy phase of a round trip and F the number of flips of
 //! an axis (Kogelnik & Li, Appl. Opt. 5, 1550 (1966), with the flips of a ring's frame).
 
-use std::f64::consts::TAU;
+use std::f64::consts::{FRAC_2_PI, PI, TAU};
 
 use super::eigenmode::PlaneMode;
 use crate::cavity::Cavity;
@@ -24,9 +24,6 @@ pub fn spacings<T: Real>(cavity: &Cavity, modes: &PerPlane<PlaneMode<T>>) -> Per
     }
 }
 
-/// Highest order m + n that is ever looked at.
-pub const HIGHEST_ORDER: usize = 100;
-
 /// Multiples of a spacing, folded: the table from which offsets of modes are summed.
 #[derive(Clone, Debug)]
 pub struct Multiples<T>(Vec<T>);
@@ -34,6 +31,21 @@ pub struct Multiples<T>(Vec<T>);
 impl<T> Default for Multiples<T> {
     fn default() -> Self {
         Multiples(Vec::new())
+    }
+}
+
+impl<T: Real> Multiples<T> {
+    /// The multiples from none to the highest.
+    #[inline(always)]
+    fn of(&mut self, spacing: T, highest: usize) -> &[T] {
+        let Multiples(folded) = self;
+        folded.clear();
+        let mut turns = T::constant(0.0);
+        for _ in 0..=highest {
+            folded.push(turns.folded());
+            turns = turns + spacing;
+        }
+        folded
     }
 }
 
@@ -50,13 +62,7 @@ pub fn each_nearness<T: Real>(
     multiples: &mut Multiples<T>,
     mut visit: impl FnMut(usize, usize, T),
 ) {
-    let Multiples(sagittal) = multiples;
-    sagittal.clear();
-    let mut turns = T::constant(0.0);
-    for _ in 0..=highest {
-        sagittal.push(turns.folded());
-        turns = turns + spacing.sagittal;
-    }
+    let sagittal = multiples.of(spacing.sagittal, highest);
     let mut turns = T::constant(0.0);
     for m in 0..=highest {
         let tangential = turns.folded();
@@ -69,6 +75,28 @@ pub fn each_nearness<T: Real>(
     }
 }
 
+/// Offset of TEM_mn from the fundamental in free spectral ranges, in [−½, ½), from the spacings of
+/// [`spacings`].
+pub fn offset(spacing: PerPlane<f64>, m: usize, n: usize) -> f64 {
+    let tangential = Real::folded(spacing.tangential * m as f64);
+    let sagittal = Real::folded(spacing.sagittal * n as f64);
+    in_one_range(tangential + sagittal)
+}
+
+/// A frequency in free spectral ranges, folded into [−½, ½).
+pub fn in_one_range(turns: f64) -> f64 {
+    let folded = Real::folded(turns);
+    if folded >= 0.5 { folded - 1.0 } else { folded }
+}
+
+/// How much less of the power a mode holds at an offset (in free spectral ranges) than on its own
+/// resonance: 1 + F_c sin²(πΔ/FSR), with F_c = (2ℱ/π)² the coefficient of finesse.
+#[inline(always)]
+pub fn suppression<T: Real>(offset: T, finesse: T) -> T {
+    let coefficient = (finesse * FRAC_2_PI).squared();
+    coefficient * (offset * PI).sin().squared() + 1.0
+}
+
 /// The least |offset| from the fundamental of any TEM_mn with 1 ≤ m + n ≤ `highest`, in free
 /// spectral ranges.
 #[inline(always)]
@@ -77,11 +105,25 @@ pub fn least_offset<T: Real>(
     highest: usize,
     multiples: &mut Multiples<T>,
 ) -> T {
-    let mut nearest = T::constant(0.0);
-    each_nearness(spacing, highest, multiples, |_, _, nearness| {
-        nearest = nearest.max(nearness);
-    });
-    -nearest + 0.5
+    // As `each_nearness`, but two at a time: a greatest waits for the one before it.
+    let sagittal = multiples.of(spacing.sagittal, highest);
+    let mut nearest = [T::constant(0.0); 2];
+    let mut turns = T::constant(0.0);
+    for m in 0..=highest {
+        let tangential = turns.folded();
+        let nearness = |sagittal: T| ((tangential + sagittal).abs() - 0.5).abs();
+        let from = usize::from(m == 0);
+        let (pairs, odd) = sagittal[from..highest + 1 - m].as_chunks::<2>();
+        for [even, odd] in pairs {
+            nearest[0] = nearest[0].max(nearness(*even));
+            nearest[1] = nearest[1].max(nearness(*odd));
+        }
+        for last in odd {
+            nearest[0] = nearest[0].max(nearness(*last));
+        }
+        turns = turns + spacing.tangential;
+    }
+    -nearest[0].max(nearest[1]) + 0.5
 }
 
 #[cfg(test)]

@@ -37,8 +37,18 @@ pub enum Measure {
     Finesse,
     /// Free spectral range over finesse, in hertz.
     Linewidth,
+    /// Time in which the power stored falls to 1/e, in seconds.
+    Lifetime,
+    /// Spacing of neighbouring transverse orders in hertz, flips included, folded into half a free
+    /// spectral range to either side.
+    Spacing(Plane),
     /// Linewidths from the fundamental to the nearest TEM_mn.
     ModeClearance {
+        /// Highest order m + n that counts.
+        up_to: usize,
+    },
+    /// Least suppression of a TEM_mn at the fundamental's resonance: a ratio of powers, 1 or more.
+    Suppression {
         /// Highest order m + n that counts.
         up_to: usize,
     },
@@ -55,8 +65,12 @@ pub enum Presence {
     Position,
     /// An angle in radians.
     Angle,
-    /// A frequency in hertz.
+    /// A frequency in hertz, not negative.
     Frequency,
+    /// A difference of frequencies in hertz, which may be negative.
+    Offset,
+    /// A time in seconds.
+    Time,
 }
 
 /// Why a name is no measure.
@@ -69,18 +83,14 @@ pub struct MeasureError {
 }
 
 /// Measures that will be named but cannot be computed yet.
-const LATER: [&str; 6] = [
-    "lifetime",
-    "buildup",
-    "spacing",
-    "parasitic",
-    "suppression",
-    "coupling",
-];
+const LATER: [&str; 3] = ["buildup", "parasitic", "coupling"];
+
+/// Highest order m + n of transverse modes that is ever looked at.
+pub const HIGHEST_ORDER: usize = 100;
 
 /// Measures of a whole cavity and of a part, for suggestions.
 const KNOWN: &str = "margin, half_trace.tangential, gouy.tangential, round_trip_length, fsr, \
-     finesse, linewidth, mode_clearance, distance.M1.M2, or a part's spot, least, waist, waist_at or aspect such as M1.spot";
+     finesse, linewidth, lifetime, spacing.tangential, mode_clearance, suppression.12, distance.M1.M2, or a part's spot, least, waist, waist_at or aspect such as M1.spot";
 
 impl Measure {
     /// Reads a measure by its name, such as `margin` or `X1.least.sagittal`.
@@ -133,6 +143,20 @@ impl Measure {
             "fsr" if at_most(1) => Measure::Fsr,
             "finesse" if at_most(1) => Measure::Finesse,
             "linewidth" if at_most(1) => Measure::Linewidth,
+            "lifetime" if at_most(1) => Measure::Lifetime,
+            "spacing" if at_most(2) => Measure::Spacing(needs_plane(plane_of(words.get(1))?)?),
+            "suppression" if at_most(2) => {
+                let order = words.get(1).and_then(|word| word.parse().ok());
+                let up_to = order
+                    .filter(|order| (1..=HIGHEST_ORDER).contains(order))
+                    .ok_or_else(|| {
+                        error(
+                            format!("\"{name}\" does not say up to which order"),
+                            "write suppression.12 for orders up to 12; 100 is the most",
+                        )
+                    })?;
+                Measure::Suppression { up_to }
+            }
             "mode_clearance" if at_most(1) => Measure::ModeClearance {
                 up_to: cavity.highest_order,
             },
@@ -203,10 +227,13 @@ impl Measure {
             | Measure::HalfTrace(_)
             | Measure::Aspect(_)
             | Measure::Finesse
-            | Measure::ModeClearance { .. } => Presence::Number,
+            | Measure::ModeClearance { .. }
+            | Measure::Suppression { .. } => Presence::Number,
             Measure::Gouy(_) => Presence::Angle,
             Measure::WaistAt(..) => Presence::Position,
             Measure::Fsr | Measure::Linewidth => Presence::Frequency,
+            Measure::Spacing(_) => Presence::Offset,
+            Measure::Lifetime => Presence::Time,
             Measure::Spot(..)
             | Measure::Least(..)
             | Measure::Waist(..)

@@ -15,7 +15,7 @@ mod walk;
 
 pub use assemble::{Draft, Fault};
 pub use book::{Book, Entry, Origin, Slot, Tie};
-pub use measure::{Bounds, Limit, Measure, MeasureError, Presence};
+pub use measure::{Bounds, HIGHEST_ORDER, Limit, Measure, MeasureError, Presence};
 pub use part::{
     Coating, Element, Incidence, Index, Mirror, Opening, Part, Polarisation, Side, Slab, SlabLoss,
     Substrate, ThermalLens, ThermalPlace,

@@ -211,6 +211,24 @@ pub enum Polarisation {
     P,
 }
 
+impl Polarisation {
+    /// Its name in files.
+    pub fn name(self) -> &'static str {
+        match self {
+            Polarisation::S => "s",
+            Polarisation::P => "p",
+        }
+    }
+
+    /// The one square to it.
+    pub fn other(self) -> Polarisation {
+        match self {
+            Polarisation::S => Polarisation::P,
+            Polarisation::P => Polarisation::S,
+        }
+    }
+}
+
 /// A mirror.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Mirror {

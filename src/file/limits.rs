@@ -87,7 +87,8 @@ pub(super) fn measure_kind(measure: Measure) -> Kind {
         Presence::Length => Kind::Length,
         Presence::Position => Kind::Position,
         Presence::Angle => Kind::Angle,
-        Presence::Frequency => Kind::Frequency,
+        Presence::Frequency | Presence::Offset => Kind::Frequency,
+        Presence::Time => Kind::Time,
     }
 }
 

@@ -1,7 +1,8 @@
-//! Numerics without optics: the number type the physics is written over, and root finding.
+//! Numerics without optics: the number type the physics is written over, root finding, quadrature.
 
 mod dual;
 mod lanes;
+pub mod quadrature;
 mod real;
 pub mod roots;
 pub mod statistics;

@@ -159,7 +159,14 @@ impl Real for f64 {
         f64::floor(self)
     }
     fn round(self) -> f64 {
-        self.round_ties_even()
+        // From here on there are no halves. Below, adding three halves of 2⁵² leaves no room for a
+        // fraction, and taking it off again costs no call.
+        const NO_FRACTIONS: f64 = 2_251_799_813_685_248.0;
+        if self.abs() < NO_FRACTIONS {
+            (self + 3.0 * NO_FRACTIONS) - 3.0 * NO_FRACTIONS
+        } else {
+            self.round_ties_even()
+        }
     }
     fn less(self, other: f64) -> bool {
         self < other
@@ -180,6 +187,25 @@ fn series(x: f64, divisor: impl Fn(f64) -> f64) -> f64 {
 mod tests {
     use super::*;
     use approx::assert_relative_eq;
+
+    #[test]
+    fn halves_are_rounded_to_even() {
+        for x in [
+            0.0,
+            0.5,
+            1.5,
+            2.5,
+            -0.5,
+            -1.5,
+            0.49999999999999994,
+            1e15 + 0.5,
+            2.3e15,
+            -4.6e15,
+            1e300,
+        ] {
+            assert_eq!(Real::round(x), x.round_ties_even(), "{x}");
+        }
+    }
 
     #[test]
     fn root_functions_join_smoothly_and_match_their_closed_forms() {

@@ -81,6 +81,8 @@ pub enum Block {
     Heading(String),
     /// Running text.
     Text(String),
+    /// Lines that are drawn with letters and kept as they are.
+    Drawing(Vec<String>),
     /// A table.
     Table(Table),
     /// A line of a list, with what it begins with.

@@ -35,6 +35,16 @@ pub const FREQUENCIES: [Scale; 6] = [
     scale("THz", 1e12),
 ];
 
+/// Units of times, smallest first.
+pub const TIMES: [Scale; 6] = [
+    scale("fs", 1e-15),
+    scale("ps", 1e-12),
+    scale("ns", 1e-9),
+    scale("µs", 1e-6),
+    scale("ms", 1e-3),
+    scale("s", 1.0),
+];
+
 /// Units of powers, smallest first.
 pub const POWERS: [Scale; 6] = [
     scale("nW", 1e-9),

@@ -3,6 +3,7 @@
 mod csv;
 mod manual;
 mod materials;
+mod modes;
 mod new;
 mod schema;
 mod sweep;
@@ -79,6 +80,7 @@ fn every_help_fits_80_columns_and_shows_an_example() {
         "sweep",
         "materials",
         "tolerance",
+        "modes",
         "new",
         "schema",
         "completions",

@@ -1,6 +1,7 @@
 //! What holds of every text whatever, once it has been read.
 
 use modewright::analysis;
+use modewright::cavity::Cavity;
 use modewright::file::{self, Loaded, Refused};
 use modewright::optics::Plane;
 use modewright::report::{describe, render};
@@ -58,7 +59,21 @@ pub fn examine(text: &str) -> bool {
     for word in ["NaN", "inf "] {
         assert!(!told.contains(word), "{told}");
     }
+    examine_modes(cavity);
     true
+}
+
+/// The same of the transverse modes.
+fn examine_modes(cavity: &Cavity) {
+    let modes = analysis::modes::modes(cavity, analysis::modes::APART, &[]);
+    let json = render::json::render("modes", "any.toml", &modes).unwrap();
+    let value: serde_json::Value = serde_json::from_str(&json).unwrap();
+    assert_explained(&value, &mut Vec::new());
+    let told = render::terminal::render(&describe::modes(&modes));
+    for word in ["NaN", "inf "] {
+        assert!(!told.contains(word), "{told}");
+    }
+    assert!(render::plot::scene(&describe::modes_chart(&modes)).is_ok());
 }
 
 /// What is null stands beside a reason.

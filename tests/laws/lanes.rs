@@ -17,7 +17,10 @@ fn measures(cavity: &Cavity) -> Vec<Measure> {
         "round_trip_length".into(),
         "fsr".into(),
         "finesse".into(),
+        "lifetime".into(),
+        "spacing.sagittal".into(),
         "mode_clearance".into(),
+        "suppression.7".into(),
     ];
     for part in cavity.parts() {
         names.push(format!("{}.spot", part.name));
@@ -97,6 +100,9 @@ proptest! {
                     Measure::Margin(_) | Measure::HalfTrace(_) => value.abs().max(1.0),
                     Measure::WaistAt(..) => value.abs().max(1.0),
                     Measure::ModeClearance { .. } => value.abs().max(1000.0),
+                    // Angles times a free spectral range, or a coefficient of finesse.
+                    Measure::Spacing(_) => value.abs().max(1e10),
+                    Measure::Suppression { .. } => value.abs().max(1e6),
                     _ => value.abs(),
                 };
                 let allowed = ROUNDING * size * (1.0 + 1.0 / margin.abs());

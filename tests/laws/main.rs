@@ -4,6 +4,7 @@
 mod crystal_face;
 mod lanes;
 mod mode;
+mod modes;
 mod parts;
 mod ranges;
 mod second_road;

@@ -12,3 +12,4 @@ mod lens_maker;
 mod magni;
 mod real_cavities;
 mod second_sources;
+mod transverse_modes;

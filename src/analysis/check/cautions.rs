@@ -12,17 +12,26 @@ use crate::quantity::{Kind, Spread};
 /// Entries of a matrix this small against the round trip are zero for the naming of an edge.
 const VANISHES: f64 = 1e-9;
 
-pub(super) fn edge_reason(cavity: &Cavity, values: &[f64], plane: Plane) -> String {
+/// Whether the round trip of a plane is ±1 times the identity: then every beam repeats itself.
+pub(in crate::analysis) fn everything_repeats(
+    cavity: &Cavity,
+    values: &[f64],
+    plane: Plane,
+) -> bool {
     let way = cavity.one_way(values)[plane];
-    let mode = PlaneMode::of(cavity.form(), way);
     let length = RoundTripLengths::of(cavity, values).geometric;
     let m = match cavity.form() {
         Form::Ring => way,
         Form::Standing => way.then(way.reversed()),
     };
-    let everything_repeats = m.b.abs() <= VANISHES * length && m.c.abs() <= VANISHES / length;
+    m.b.abs() <= VANISHES * length && m.c.abs() <= VANISHES / length
+}
+
+pub(in crate::analysis) fn edge_reason(cavity: &Cavity, values: &[f64], plane: Plane) -> String {
+    let way = cavity.one_way(values)[plane];
+    let mode = PlaneMode::of(cavity.form(), way);
     let sign = if mode.half_trace > 0.0 { "+1" } else { "−1" };
-    if everything_repeats {
+    if everything_repeats(cavity, values, plane) {
         let kind = if mode.half_trace < 0.0 {
             "confocal"
         } else {
@@ -103,9 +112,8 @@ pub(super) fn square_on_folds(cavity: &Cavity, values: &[f64]) -> Option<String>
     })
 }
 
-/// Doubts about the numbers themselves.
-pub(super) fn data_cautions(cavity: &Cavity) -> Vec<String> {
-    let mut cautions = Vec::new();
+/// Whether some phase index stands in for a group index.
+pub(in crate::analysis) fn without_group_index(cavity: &Cavity) -> Option<String> {
     let without_group: Vec<&str> = cavity
         .parts()
         .iter()
@@ -117,12 +125,17 @@ pub(super) fn data_cautions(cavity: &Cavity) -> Vec<String> {
         })
         .map(|part| part.name.as_str())
         .collect();
-    if !without_group.is_empty() {
-        cautions.push(format!(
+    (!without_group.is_empty()).then(|| {
+        format!(
             "no group index for {}: its phase index stands in, so the FSR is a little too large",
             list(&without_group)
-        ));
-    }
+        )
+    })
+}
+
+/// Doubts about the numbers themselves.
+pub(super) fn data_cautions(cavity: &Cavity) -> Vec<String> {
+    let mut cautions: Vec<String> = without_group_index(cavity).into_iter().collect();
     let radii = |entry: &&Entry| entry.kind == Kind::Radius && entry.origin == Origin::Written;
     let has_spread = |entry: &Entry| entry.spread != Spread::Exact;
     let book = cavity.book();

@@ -17,6 +17,7 @@ use super::ranges::stable_ranges;
 use crate::cavity::Cavity;
 use crate::optics::PerPlane;
 use cautions::{clipping_caution, data_cautions, mode_cautions, square_on_folds};
+pub(in crate::analysis) use cautions::{edge_reason, everything_repeats, without_group_index};
 use limits::{describe_range, limits};
 use view::View;
 

@@ -3,11 +3,11 @@
 use super::cautions::edge_reason;
 use super::result::{Leaving, LeavingPlane, PlaneCheck, Spot, Station, Waist};
 use super::{NO_MODE, TOO_LARGE};
-use crate::analysis::clipping;
+use crate::analysis::clipping::{self, Rim};
 use crate::analysis::eigenmode::{Eigenmode, Stability};
 use crate::analysis::envelope::{AtPart, Envelope};
 use crate::analysis::leaving;
-use crate::cavity::{Cavity, Element, Form, Index, Opening, Part, slab_crossing};
+use crate::cavity::{Cavity, Element, Form, Index, Part};
 use crate::optics::beam::Beam;
 use crate::optics::{PerPlane, Plane};
 
@@ -123,16 +123,14 @@ impl View<'_> {
             (self.holds(plane) && is_finite).then_some(spot)
         };
         let (tangential, sagittal) = (spot(Plane::Tangential), spot(Plane::Sagittal));
-        let cosine = self.surface_cosine(part, face);
         let footprint = tangential.zip(sagittal).map(|(t, s)| {
-            let mut radii = [t.spot_m, s.spot_m];
-            radii[usize::from(part.swapped)] /= cosine;
-            radii
+            clipping::footprint(part, face.is_some(), self.values, [t.spot_m, s.spot_m])
         });
         let footprint = footprint.filter(|radii| radii.iter().all(|radius| radius.is_finite()));
         let lacks = tangential.is_none() || sagittal.is_none() || footprint.is_none();
         let clip_loss = footprint
-            .and_then(|radii| self.clip_loss(part, radii))
+            .zip(Rim::of(self.cavity, part, self.values))
+            .map(|(radii, rim)| rim.loss(radii))
             .filter(|loss| loss.is_finite());
         let why = if lacks {
             Some(self.why().unwrap_or_else(|| TOO_LARGE.into()))
@@ -153,49 +151,6 @@ impl View<'_> {
             clip_loss,
             why,
         }
-    }
-
-    /// Cosine of the angle at which the beam meets the surface, on the side where it is.
-    fn surface_cosine(&self, part: &Part, face: Option<&'static str>) -> f64 {
-        match &part.element {
-            Element::Mirror(mirror) => mirror.incidence.of(self.values).cos(),
-            Element::Slab(slab) => {
-                let outside = part.before.phase(self.values);
-                let crossing = slab_crossing(slab, outside, self.values);
-                if face.is_some() {
-                    crossing.cos_to
-                } else {
-                    crossing.cos_from
-                }
-            }
-            _ => 1.0,
-        }
-    }
-
-    fn clip_loss(&self, part: &Part, [t, s]: [f64; 2]) -> Option<f64> {
-        let values = self.values;
-        let clear = part.clear;
-        Some(match part.opening? {
-            Opening::Round { diameter } => clipping::round(0.5 * clear * diameter.of(values), t, s),
-            Opening::Hole { radius } => clipping::round(radius.of(values), t, s),
-            Opening::Slit { half_width, plane } => clipping::slit(
-                half_width.of(values),
-                if plane == Plane::Tangential { t } else { s },
-            ),
-            Opening::Rectangle { width, height } => {
-                let (across, up) = if self.cavity.tangential_is_horizontal() {
-                    (t, s)
-                } else {
-                    (s, t)
-                };
-                clipping::rectangle(
-                    0.5 * clear * width.of(values),
-                    0.5 * clear * height.of(values),
-                    across,
-                    up,
-                )
-            }
-        })
     }
 
     pub(super) fn waists(&self) -> Vec<Waist> {

@@ -24,7 +24,9 @@ pub struct Evaluator<'c> {
     cavity: &'c Cavity,
     measures: Vec<Measure>,
     route: Route,
-    /// The finesse and whether it exists, where no loss varies.
+    /// −ln ρ² of a round trip, where no loss varies.
+    attenuation: Option<f64>,
+    /// The finesse and whether it exists, likewise.
     finesse: Option<(f64, bool)>,
 }
 
@@ -54,6 +56,7 @@ impl<'c> Evaluator<'c> {
             cavity,
             measures,
             route,
+            attenuation: None,
             finesse: None,
         }
     }
@@ -69,8 +72,10 @@ impl<'c> Evaluator<'c> {
             }
         }
         let is_lossy = |slot: &Slot| moves.contains(slot);
-        self.finesse = (!airy::loss_slots(self.cavity).iter().any(is_lossy))
-            .then(|| airy::finesse(airy::round_trip_attenuation(self.cavity, &book.nominal())));
+        let polarisation = self.cavity.polarisation;
+        self.attenuation = (!airy::loss_slots(self.cavity).iter().any(is_lossy))
+            .then(|| airy::round_trip_attenuation(self.cavity, &book.nominal(), polarisation));
+        self.finesse = self.attenuation.map(airy::finesse);
         let measures = &self.measures;
         self.route = Route::new(self.cavity, Some(&moves), |part| is_watched(measures, part));
         self
@@ -148,8 +153,12 @@ pub fn value(cavity: &Cavity, values: &[f64], measure: Measure) -> Option<f64> {
 /// Why a measure has no value where it has none.
 pub fn why_none(measure: Measure) -> &'static str {
     match measure {
-        Measure::Finesse | Measure::Linewidth => "nothing is written of any loss",
-        Measure::ModeClearance { .. } => "the cavity holds no mode, or no loss is written",
+        Measure::Finesse | Measure::Linewidth | Measure::Lifetime => {
+            "nothing is written of any loss"
+        }
+        Measure::ModeClearance { .. } | Measure::Suppression { .. } => {
+            "the cavity holds no mode, or no loss is written"
+        }
         _ => "the cavity holds no mode",
     }
 }

@@ -87,11 +87,30 @@ impl<'a, T: Real> Reading<'a, T> {
                 let (finesse, exists) = self.finesse();
                 (self.lengths().free_spectral_range() / finesse, exists)
             }
+            Measure::Lifetime => {
+                let attenuation = self.attenuation();
+                let exists = T::constant(0.0).less(attenuation);
+                let lost = T::select(exists, attenuation, T::constant(1.0));
+                (
+                    (self.lengths().free_spectral_range() * lost).recip(),
+                    exists,
+                )
+            }
+            Measure::Spacing(plane) => {
+                let spacing = spectrum::spacings(self.cavity, self.modes)[plane].folded();
+                let fsr = self.lengths().free_spectral_range();
+                (spacing * fsr, self.modes[plane].stable)
+            }
             Measure::ModeClearance { up_to } => {
                 let (finesse, exists) = self.finesse();
-                let spacings = spectrum::spacings(self.cavity, self.modes);
-                let offset = spectrum::least_offset(spacings, up_to, multiples);
+                let offset = self.least_offset(up_to, multiples);
                 (offset * finesse, exists & self.both_stable())
+            }
+            Measure::Suppression { up_to } => {
+                let (finesse, exists) = self.finesse();
+                let offset = self.least_offset(up_to, multiples);
+                let suppression = spectrum::suppression(offset, finesse);
+                (suppression, exists & self.both_stable())
             }
         }
     }
@@ -156,7 +175,8 @@ impl<'a, T: Real> Reading<'a, T> {
 
     #[inline(always)]
     fn least(&self, part: usize, plane: Plane) -> T {
-        let mut least = self.arriving(part, plane).1.beta();
+        // Just inside: at a tilted face the beam outside is narrower.
+        let mut least = self.entered(part, plane).beta;
         for which in [0, 1] {
             if let Some((stretch, ray)) = self.stretch(part, which, plane) {
                 least = least.min(stretch.least_beta(ray.beam()));
@@ -240,16 +260,31 @@ impl<'a, T: Real> Reading<'a, T> {
     }
 
     #[inline(always)]
-    fn finesse(&self) -> (T, T::Mask) {
-        match self.evaluator.finesse {
-            Some((finesse, exists)) => (T::constant(finesse), T::always(exists)),
-            None => self.varied_finesse(),
+    fn least_offset(&self, up_to: usize, multiples: &mut Multiples<T>) -> T {
+        let spacings = spectrum::spacings(self.cavity, self.modes);
+        spectrum::least_offset(spacings, up_to, multiples)
+    }
+
+    #[inline(always)]
+    fn attenuation(&self) -> T {
+        match self.evaluator.attenuation {
+            Some(attenuation) => T::constant(attenuation),
+            None => self.varied_attenuation(),
         }
     }
 
     #[inline(never)]
-    fn varied_finesse(&self) -> (T, T::Mask) {
-        airy::finesse(airy::round_trip_attenuation(self.cavity, self.values))
+    fn varied_attenuation(&self) -> T {
+        let polarisation = self.cavity.polarisation;
+        airy::round_trip_attenuation(self.cavity, self.values, polarisation)
+    }
+
+    #[inline(always)]
+    fn finesse(&self) -> (T, T::Mask) {
+        match self.evaluator.finesse {
+            Some((finesse, exists)) => (T::constant(finesse), T::always(exists)),
+            None => airy::finesse(self.attenuation()),
+        }
     }
 
     #[inline(always)]

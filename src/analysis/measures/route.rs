@@ -69,6 +69,10 @@ impl<T: Real> Inside<T> {
 
 /// Where to look for what a part has inside.
 #[derive(Clone, Copy, Debug)]
+#[expect(
+    clippy::large_enum_variant,
+    reason = "there are few of them, and each evaluation reads them in place"
+)]
 pub(super) enum Within {
     /// It is thin.
     Nothing,

@@ -472,7 +472,7 @@ fn way_back(document: &mut Document, ranges: &[Range]) {
 }
 
 /// A change of a quantity, signed, in its unit.
-fn change(from: f64, to: f64, kind: Kind) -> String {
+pub(super) fn change(from: f64, to: f64, kind: Kind) -> String {
     if (to - from).abs() <= 1e-9 * from.abs() {
         // It stands on the edge.
         return "any".into();

@@ -1,7 +1,14 @@
 //! Numbers of measures for readers.
 
 use crate::cavity::{Bounds, Presence};
-use crate::report::number::{FREQUENCIES, LENGTHS, NUMBERS, Scale, common, plain, significant};
+use crate::report::number::{
+    FREQUENCIES, LENGTHS, NUMBERS, Scale, TIMES, common, plain, significant,
+};
+
+const RADIANS: [Scale; 1] = [Scale {
+    symbol: "rad",
+    size: 1.0,
+}];
 
 /// The number of a measure with its unit.
 pub(super) fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> String) -> String {
@@ -12,7 +19,13 @@ pub(super) fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> Str
             format!("{} {}", digits(x / scale.size, 4), scale.symbol)
         }
         Presence::Angle => format!("{} rad", digits(x, 4)),
-        Presence::Frequency => frequency(x),
+        Presence::Frequency | Presence::Offset => frequency(x),
+        Presence::Time => {
+            // A time is shorter than whatever rounds to nothing elsewhere.
+            let fits = TIMES.iter().rev().find(|scale| x.abs() >= scale.size);
+            let scale = fits.unwrap_or(&TIMES[0]);
+            format!("{} {}", digits(x / scale.size, 4), scale.symbol)
+        }
     }
 }
 
@@ -27,17 +40,19 @@ pub(super) fn wanted(bounds: Bounds, presence: Presence) -> String {
 }
 
 /// Units for an axis of a measure.
-pub(super) fn scales(presence: Presence) -> &'static [Scale] {
+pub(super) fn scales_of(presence: Presence) -> &'static [Scale] {
     match presence {
-        Presence::Number | Presence::Angle => &NUMBERS,
+        Presence::Number => &NUMBERS,
+        Presence::Angle => &RADIANS,
         Presence::Length | Presence::Position => &LENGTHS,
-        Presence::Frequency => &FREQUENCIES,
+        Presence::Frequency | Presence::Offset => &FREQUENCIES,
+        Presence::Time => &TIMES,
     }
 }
 
 /// A frequency with the unit that fits it.
 pub(super) fn frequency(hertz: f64) -> String {
-    let (size, unit) = match hertz {
+    let (size, unit) = match hertz.abs() {
         f if f >= 1e12 => (1e12, "THz"),
         f if f >= 1e9 => (1e9, "GHz"),
         f if f >= 1e6 => (1e6, "MHz"),

@@ -4,6 +4,7 @@ mod check;
 mod envelope;
 pub mod materials;
 mod measured;
+mod modes;
 mod sections;
 mod sweep;
 mod sweep_chart;
@@ -14,6 +15,7 @@ mod waists;
 
 pub use check::describe as check;
 pub use envelope::describe as envelope;
+pub use modes::{chart as modes_chart, describe as modes};
 pub use sweep::describe as sweep;
 pub use sweep_chart::describe as sweep_chart;
 pub use tolerance::describe as tolerance;

@@ -2,7 +2,7 @@
 //! curves.
 
 use super::check::value;
-use super::measured::measured;
+use super::measured::{measured, scales_of};
 use crate::cavity::Presence;
 use crate::quantity::{Kind, human};
 use crate::report::document::{Block, Document, Table, Tone};
@@ -32,24 +32,10 @@ const PER_METRE: [Scale; 1] = [Scale {
     symbol: "1/m",
     size: 1.0,
 }];
-const RADIANS: [Scale; 1] = [Scale {
-    symbol: "rad",
-    size: 1.0,
-}];
 const KELVIN: [Scale; 1] = [Scale {
     symbol: "K",
     size: 1.0,
 }];
-
-/// Units of a measure's number, smallest first.
-pub(super) fn scales_of(presence: Presence) -> &'static [Scale] {
-    match presence {
-        Presence::Number => &NUMBERS,
-        Presence::Length | Presence::Position => &LENGTHS,
-        Presence::Angle => &RADIANS,
-        Presence::Frequency => &FREQUENCIES,
-    }
-}
 
 /// Units of a quantity on its axis, smallest first.
 pub(super) fn scales_along(varied: &Varied) -> &'static [Scale] {

@@ -1,6 +1,7 @@
 //! A sweep as a picture: curves over one quantity, maps over two.
 
-use super::sweep::{name_along, number, scales_along, scales_of, told, verdict};
+use super::measured::scales_of;
+use super::sweep::{name_along, number, scales_along, told, verdict};
 use crate::cavity::{Bounds, Limit, Measure, Presence};
 use crate::quantity::Kind;
 use crate::report::chart::{

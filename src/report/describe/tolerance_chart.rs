@@ -1,6 +1,6 @@
 //! A tolerance study as a picture: how the measures lie, and what makes their variance.
 
-use super::measured::{measured, scales, wanted};
+use super::measured::{measured, scales_of, wanted};
 use super::tolerance::judged;
 use crate::cavity::Bounds;
 use crate::report::chart::{Across, Bar, Chart, Histogram, Layer, Meaning, Panel, Reference};
@@ -108,7 +108,7 @@ fn histogram(found: &Tolerance, name: &str, statistics: &Statistics) -> Panel {
     layers.extend(references);
     Panel {
         heading,
-        x: Axis::of(name, shown, scales(presence)),
+        x: Axis::of(name, shown, scales_of(presence)),
         y: Some(Axis::from_zero("share of samples", shares, &RATIOS)),
         layers,
     }

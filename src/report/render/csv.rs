@@ -1,6 +1,7 @@
 //! Tables as comma-separated values: SI units, full precision, names as in the JSON.
 
 use crate::analysis::check::{Check, Spot};
+use crate::analysis::modes::Modes;
 use crate::cavity::Presence;
 use crate::quantity::Kind;
 use crate::study::sweep::{Even, Sweep, Varied};
@@ -84,7 +85,8 @@ pub fn sweep(sweep: &Sweep) -> Result<Vec<u8>, csv::Error> {
             Presence::Number => "",
             Presence::Length | Presence::Position => "_m",
             Presence::Angle => "_rad",
-            Presence::Frequency => "_hz",
+            Presence::Frequency | Presence::Offset => "_hz",
+            Presence::Time => "_s",
         };
         format!("{name}{suffix}")
     });
@@ -101,6 +103,42 @@ pub fn sweep(sweep: &Sweep) -> Result<Vec<u8>, csv::Error> {
         let measures = (sweep.measures.0.iter())
             .map(|(_, column)| number(column.values.get(point).copied().flatten()));
         table.write_record(quantities.chain(measures))?;
+    }
+    table
+        .into_inner()
+        .map_err(|error| error.into_error().into())
+}
+
+const MODES: [&str; 8] = [
+    "m",
+    "n",
+    "order",
+    "offset_hz",
+    "offset_linewidths",
+    "suppression_db",
+    "clip_loss",
+    "content",
+];
+
+/// The transverse modes; a value that does not exist is an empty field.
+///
+/// # Errors
+/// None that a table in memory can cause; the writer's own are passed on.
+pub fn modes(modes: &Modes) -> Result<Vec<u8>, csv::Error> {
+    let mut table = csv::Writer::from_writer(Vec::new());
+    table.write_record(MODES)?;
+    let number = |x: Option<f64>| x.map_or(String::new(), |x| format!("{x:?}"));
+    for mode in &modes.modes {
+        table.write_record([
+            mode.m.to_string(),
+            mode.n.to_string(),
+            mode.order.to_string(),
+            number(Some(mode.offset_hz)),
+            number(mode.offset_linewidths),
+            number(mode.suppression_db),
+            number(mode.clip_loss),
+            number(mode.content),
+        ])?;
     }
     table
         .into_inner()

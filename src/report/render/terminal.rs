@@ -38,6 +38,12 @@ pub fn render(document: &Document) -> String {
                     out.push('\n');
                 }
             }
+            Block::Drawing(lines) => {
+                for line in lines {
+                    out += line;
+                    out.push('\n');
+                }
+            }
             Block::Table(table) => out += &render_table(table),
             Block::Item { mark, text, tone } => {
                 let style = style(*tone);

@@ -128,6 +128,7 @@ pub fn tolerance(
     let nominals = nominal_values(cavity, &measures);
     let mut plan = Plan {
         ranges: vec![[0.0, 1.0]; named.len()],
+        wraps: wraps(cavity, &named, &nominals),
         limits: limits_of(cavity, &named),
         near: nominal.map(|_| Near {
             finesse: measures.len() - 1,
@@ -201,6 +202,24 @@ fn named_measures(cavity: &Cavity, options: &Options) -> Vec<(String, Measure)> 
         named.push(("margin".into(), Measure::Margin(None)));
     }
     named
+}
+
+/// Spacings are folded into half a free spectral range to either side: they are counted from their
+/// nominal value, so that samples on both sides of the fold lie together.
+fn wraps(
+    cavity: &Cavity,
+    named: &[(String, Measure)],
+    nominals: &[Option<f64>],
+) -> Vec<Option<[f64; 2]>> {
+    let period = nominal_values(cavity, &[Measure::Fsr])[0];
+    named
+        .iter()
+        .zip(nominals)
+        .map(|((_, measure), nominal)| match measure {
+            Measure::Spacing(_) => Some([(*nominal)?, period?]),
+            _ => None,
+        })
+        .collect()
 }
 
 fn limits_of(cavity: &Cavity, named: &[(String, Measure)]) -> Vec<(usize, [f64; 2])> {

@@ -15,6 +15,8 @@ const BINS: usize = 2048;
 pub(super) struct Plan {
     /// For each measure, the range of its histogram.
     pub(super) ranges: Vec<[f64; 2]>,
+    /// For each measure that is circular, the value from which it is counted and its period.
+    pub(super) wraps: Vec<Option<[f64; 2]>>,
     /// For each limit, the measure and the least and greatest good value.
     pub(super) limits: Vec<(usize, [f64; 2])>,
     /// Which measure is the finesse, highest order, and how near in linewidths is too near.
@@ -273,7 +275,11 @@ impl WithSimd for Take<'_> {
             for measure in 0..plan.measures {
                 let at = block * outputs + measure;
                 let counts = chunk.exists[at] & stable;
-                tally.measures[measure].take(chunk.values[at], counts);
+                let mut value = chunk.values[at];
+                if let Some([origin, period]) = plan.wraps[measure] {
+                    value = ((value - origin) / period).folded() * period + origin;
+                }
+                tally.measures[measure].take(value, counts);
             }
             let Some(near) = plan.near else {
                 continue;

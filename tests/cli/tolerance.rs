@@ -73,5 +73,5 @@ fn wrong_input_is_told_once_and_clearly() {
     let said = wrong(&["tolerance", "cavities/confocal-analyser.toml"]);
     assert!(said.contains("has a tolerance"), "{said}");
     assert!(!wrong(&["tolerance", RING, "--samples", "0"]).is_empty());
-    assert!(wrong(&["tolerance", RING, "--apart", "-1"]).contains("above zero"));
+    assert!(wrong(&["tolerance", RING, "--apart", "0"]).contains("above zero"));
 }

@@ -159,18 +159,11 @@ fn ends(columns: &[&Column], stable: Option<&[bool]>, limits: &[&Limit]) -> Opti
         .collect();
     values.sort_by(f64::total_cmp);
     let wanted = limits.iter().flat_map(|limit| bounds(limit));
-    let (Some(least), Some(greatest)) = (values.first(), values.last()) else {
-        // Without any value, what is wanted is shown.
-        let wanted: Vec<f64> = wanted.map(|(at, _)| at).collect();
-        let least = wanted.iter().copied().reduce(f64::min)?;
-        let greatest = wanted.iter().copied().reduce(f64::max)?;
-        return Some([least, greatest]);
-    };
-    let (least, greatest) = (*least, *greatest);
+    let (least, greatest) = (*values.first()?, *values.last()?);
     let of_most = values[((values.len() - 1) as f64 * MOST) as usize];
     let (low, high) = match columns[0].measure.presence() {
         // Deep in instability nobody counts how deep.
-        Presence::Number => (least.max(-1.0_f64.max(-greatest.abs())), greatest),
+        Presence::Number if greatest > 0.0 => (least.max(-greatest.max(1.0)), greatest),
         Presence::Length if of_most > 0.0 => (least, greatest.min(BEYOND_MOST * of_most)),
         _ => (least, greatest),
     };
@@ -257,7 +250,8 @@ fn curves(sweep: &Sweep, varied: &Varied, group: &Group<'_>) -> Panel {
             label: "as designed".into(),
         }));
     }
-    for limit in limits {
+    // Where nothing is drawn, nothing is beside it either.
+    for limit in limits.iter().filter(|_| ends.is_some()) {
         for (at, meaning) in bounds(limit) {
             layers.push(Layer::Reference(Reference {
                 across: Across::Y,

@@ -76,6 +76,11 @@ impl<'c> Batch<'c> {
         }
     }
 
+    /// The cavity.
+    pub fn cavity(&self) -> &'c Cavity {
+        self.cavity
+    }
+
     /// The varied numbers, in the order of the inputs.
     pub fn varied(&self) -> &[Slot] {
         &self.varied

@@ -194,7 +194,7 @@ fn spread_of(found: &Tolerance, quantity: &str) -> String {
         .varied
         .iter()
         .filter(|one| one.quantity == quantity || one.moves_with.as_deref() == Some(quantity))
-        .map(|one| tolerance_of(one))
+        .map(tolerance_of)
         .collect();
     match &spreads[..] {
         [first, others @ ..] if others.iter().all(|other| other == first) => first.clone(),

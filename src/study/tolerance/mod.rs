@@ -160,24 +160,34 @@ pub fn tolerance(
     if !complete {
         return Ok(found);
     }
-    let mut go_on = |stage, share| progress(stage, share);
-    found.stopped = !(|| {
-        (found.contributions, found.contribution_samples) =
-            contributions::of(&sampler, &named, &nominals, &mut go_on)?;
-        if !plan.limits.is_empty() || found.unstable > 0.0 {
-            (found.tightening, found.tightening_samples) = tighten::of(&sampler, &mut go_on)?;
-        }
-        found.worst = worst::of(cavity, &sampler, &found.limits, &mut go_on)?;
-        if !cavity.tolerancing.adjust.is_empty() {
-            found.readjusted = Some(adjust::of(cavity, &sampler, &mut go_on)?);
-        }
-        if let Some(wanted) = options.wanted {
-            found.budget = Some(budget::of(cavity, &sampler, wanted, &mut go_on)?);
-        }
-        Some(())
-    })()
-    .is_some();
+    let followed = follow(&sampler, options, &named, &nominals, &mut found, progress);
+    found.stopped = followed.is_none();
     Ok(found)
+}
+
+/// What follows from the samples; none where the study was ended.
+fn follow(
+    sampler: &Sampler<'_>,
+    options: &Options,
+    named: &[(String, Measure)],
+    nominals: &[Option<f64>],
+    found: &mut Tolerance,
+    progress: &mut dyn FnMut(Stage, f64) -> bool,
+) -> Option<()> {
+    let cavity = sampler.batch.cavity();
+    (found.contributions, found.contribution_samples) =
+        contributions::of(sampler, named, nominals, progress)?;
+    if !sampler.plan.limits.is_empty() || found.unstable > 0.0 {
+        (found.tightening, found.tightening_samples) = tighten::of(sampler, progress)?;
+    }
+    found.worst = worst::of(cavity, sampler, &found.limits, progress)?;
+    if !cavity.tolerancing.adjust.is_empty() {
+        found.readjusted = Some(adjust::of(cavity, sampler, progress)?);
+    }
+    if let Some(wanted) = options.wanted {
+        found.budget = Some(budget::of(cavity, sampler, wanted, progress)?);
+    }
+    Some(())
 }
 
 /// The measures of the limits and those asked for, each once; the margin where there is none.

@@ -43,7 +43,8 @@ impl Search<'_> {
                 .evaluate(&self.values, &mut self.workspace, |_, value, exists| {
                     found = Some(value).filter(|value: &f64| exists && value.is_finite());
                 });
-        if !(modes.tangential.stable && modes.sagittal.stable) && !self.is_margin() {
+        let is_stable = modes.tangential.stable && modes.sagittal.stable;
+        if !(is_stable || self.is_margin()) {
             found = None;
         }
         let [low, high] = self.ends;

@@ -19,7 +19,10 @@ pub(super) fn measured(x: f64, presence: Presence, digits: fn(f64, usize) -> Str
             format!("{} {}", digits(x / scale.size, 4), scale.symbol)
         }
         Presence::Angle => format!("{} rad", digits(x, 4)),
-        Presence::Frequency | Presence::Offset => frequency(x),
+        Presence::Frequency | Presence::Offset => {
+            let (size, unit) = unit_of(x);
+            format!("{} {unit}", digits(x / size, 6))
+        }
         Presence::Time => {
             // A time is shorter than whatever rounds to nothing elsewhere.
             let fits = TIMES.iter().rev().find(|scale| x.abs() >= scale.size);
@@ -52,12 +55,16 @@ pub(super) fn scales_of(presence: Presence) -> &'static [Scale] {
 
 /// A frequency with the unit that fits it.
 pub(super) fn frequency(hertz: f64) -> String {
-    let (size, unit) = match hertz.abs() {
+    let (size, unit) = unit_of(hertz);
+    format!("{} {unit}", significant(hertz / size, 6))
+}
+
+fn unit_of(hertz: f64) -> (f64, &'static str) {
+    match hertz.abs() {
         f if f >= 1e12 => (1e12, "THz"),
         f if f >= 1e9 => (1e9, "GHz"),
         f if f >= 1e6 => (1e6, "MHz"),
         f if f >= 1e3 => (1e3, "kHz"),
         _ => (1.0, "Hz"),
-    };
-    format!("{} {unit}", significant(hertz / size, 6))
+    }
 }

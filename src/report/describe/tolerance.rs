@@ -159,8 +159,11 @@ fn measures(document: &mut Document, found: &Tolerance) {
     ]);
     for (name, statistics) in &found.measures {
         let presence = statistics.measure.presence();
-        let number =
-            |x: Option<f64>| x.map_or("–".into(), |x| measured(x, presence, significant));
+        let number = |x: Option<f64>| {
+            x.map_or("–".into(), |x| {
+                measured(x, presence, |x, n| significant(x, n.min(5)))
+            })
+        };
         let quantile = |name: &str| number(statistics.quantiles.get(name).copied().flatten());
         table.rows.push(vec![
             name.clone(),

@@ -45,7 +45,7 @@ pub(super) fn of(
             yield_if_doubled: doubled,
             yield_as_is: share(&as_is),
             gain_u: paired_uncertainty(gained, lost, samples),
-            may_be_doubled: share(&as_is) - doubled < NEGLIGIBLE,
+            may_be_doubled: doubled > 0.0 && share(&as_is) - doubled < NEGLIGIBLE,
         });
     }
     rows.sort_by(|a, b| b.yield_if_perfect.total_cmp(&a.yield_if_perfect));

@@ -3,6 +3,7 @@
 mod areas;
 mod curves;
 mod hard;
+mod studied;
 mod swept;
 
 use modewright::report::chart::{Across, Chart, Layer, Meaning, Panel, Range, Reference};
@@ -36,6 +37,9 @@ pub fn all() -> Vec<Case> {
         ("swept through flat", swept::through_flat()),
         ("swept without a mode", swept::without_mode()),
         ("map of two", swept::two()),
+        ("tolerances", studied::failing_limits()),
+        ("tolerances of spacings", studied::spacings()),
+        ("tolerances without a mode", studied::no_mode()),
         ("crowded", hard::crowded()),
     ]
 }

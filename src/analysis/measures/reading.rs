@@ -1,7 +1,7 @@
 //! Measures read off the beam once the mode is found.
 
 use super::Evaluator;
-use super::route::{Inside, Watched, Within};
+use super::route::{Inside, Within};
 use crate::analysis::airy;
 use crate::analysis::eigenmode::PlaneMode;
 use crate::analysis::lengths::RoundTripLengths;
@@ -115,25 +115,28 @@ impl<'a, T: Real> Reading<'a, T> {
         }
     }
 
-    /// A part that is asked about, and the beam arriving at it.
+    /// What a part that is asked about has inside.
     #[inline(always)]
-    fn arriving(&self, part: usize, plane: Plane) -> (&'a Within, ComplexRay<T>) {
-        let all = &self.evaluator.route.watched;
-        // Every part that a measure is about is watched from the start.
-        let position = all.iter().position(|watched| watched.part == part);
-        let position = position.unwrap_or_default();
-        let Watched { within, .. } = &all[position];
-        let way = &self.kept[position][plane];
-        (within, self.start[plane].after(*way))
+    fn within(&self, part: usize) -> &'a Within {
+        &self.evaluator.route.watched[self.evaluator.route.places[part]]
+    }
+
+    /// The beam arriving at a part that is asked about.
+    #[inline(always)]
+    fn arriving(&self, part: usize, plane: Plane) -> ComplexRay<T> {
+        let way = &self.kept[self.evaluator.route.places[part]][plane];
+        self.start[plane].after(*way)
     }
 
     /// The beam just behind a part's entrance.
     #[inline(always)]
     fn entered(&self, part: usize, plane: Plane) -> Beam<T> {
-        let (within, ray) = self.arriving(part, plane);
-        match within {
-            Within::Nothing => ray,
-            Within::Fixed(inside) => ray.after_fixed(inside.entered[plane]),
+        match self.within(part) {
+            Within::Nothing => self.arriving(part, plane),
+            Within::Fixed(inside) => {
+                let ray = self.arriving(part, plane);
+                ray.after_fixed(inside.entered[plane])
+            }
             Within::Walked(number) => self.start[plane].after(self.inside[*number].entered[plane]),
         }
         .beam()
@@ -148,11 +151,11 @@ impl<'a, T: Real> Reading<'a, T> {
         which: usize,
         plane: Plane,
     ) -> Option<(Stretch<T>, ComplexRay<T>)> {
-        let (within, ray) = self.arriving(part, plane);
-        match within {
+        match self.within(part) {
             Within::Nothing => None,
             Within::Fixed(inside) => {
                 let (stretch, way) = inside.stretches[which].as_ref()?;
+                let ray = self.arriving(part, plane);
                 Some((stretch[plane].constant(), ray.after_fixed(way[plane])))
             }
             Within::Walked(number) => {
@@ -169,7 +172,7 @@ impl<'a, T: Real> Reading<'a, T> {
         match (self.stretch(part, 0, plane), self.stretch(part, 1, plane)) {
             (_, Some((_, ray))) => ray.beta(),
             (Some((stretch, ray)), None) => ray.after(stretch.part(0.5).matrix()).beta(),
-            _ => self.arriving(part, plane).1.beta(),
+            _ => self.arriving(part, plane).beta(),
         }
     }
 

@@ -82,21 +82,14 @@ pub(super) enum Within {
     Walked(usize),
 }
 
-/// A part that is asked about.
-#[derive(Clone, Copy, Debug)]
-pub(super) struct Watched {
-    /// Index of the part.
-    pub(super) part: usize,
-    /// What it has inside.
-    pub(super) within: Within,
-}
-
 /// The prepared walk.
 #[derive(Clone, Debug)]
 pub(super) struct Route {
     pub(super) steps: Vec<Step>,
-    /// In the order in which they are kept.
-    pub(super) watched: Vec<Watched>,
+    /// What the parts that are asked about have inside, in the order in which they are kept.
+    pub(super) watched: Vec<Within>,
+    /// For each part of the cavity, its place among those that are asked about.
+    pub(super) places: Vec<usize>,
     /// Number of parts whose inside the walk keeps.
     walked_inside: usize,
 }
@@ -112,6 +105,7 @@ impl Route {
         let mut route = Route {
             steps: Vec::new(),
             watched: Vec::new(),
+            places: vec![0; cavity.parts().len()],
             walked_inside: 0,
         };
         let values = cavity.book().nominal();
@@ -143,10 +137,8 @@ impl Route {
                     });
                     Within::Fixed(inside)
                 };
-                route.watched.push(Watched {
-                    part: index,
-                    within,
-                });
+                route.places[index] = route.watched.len();
+                route.watched.push(within);
                 route.steps.push(Step::Keep);
             }
             if !varies {

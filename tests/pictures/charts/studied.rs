@@ -1,5 +1,7 @@
 //! Tolerance studies of shipped cavities.
 
+use std::sync::OnceLock;
+
 use modewright::cavity::Measure;
 use modewright::file;
 use modewright::report::chart::Chart;
@@ -21,17 +23,21 @@ fn studied(name: &str, measures: &[&str]) -> Chart {
     describe::tolerance_chart(&found)
 }
 
+/// A study is dear, and every test draws all charts.
+static CHARTS: [OnceLock<Chart>; 3] = [const { OnceLock::new() }; 3];
+
 pub fn failing_limits() -> Chart {
-    studied("compensated-z-fold", &["margin"])
+    let study = || studied("compensated-z-fold", &["margin"]);
+    CHARTS[0].get_or_init(study).clone()
 }
 
 pub fn spacings() -> Chart {
-    studied(
-        "triangular-mode-cleaner",
-        &["spacing.tangential", "mode_clearance", "lifetime"],
-    )
+    let measures = ["spacing.tangential", "mode_clearance", "lifetime"];
+    let study = || studied("triangular-mode-cleaner", &measures);
+    CHARTS[1].get_or_init(study).clone()
 }
 
 pub fn no_mode() -> Chart {
-    studied("unstable-empty-z-fold", &["margin", "fsr"])
+    let study = || studied("unstable-empty-z-fold", &["margin", "fsr"]);
+    CHARTS[2].get_or_init(study).clone()
 }

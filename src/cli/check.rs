@@ -3,7 +3,7 @@
 use clap::Args;
 
 use super::picture::Target;
-use super::{Answer, CavityFile, FINE, NO, input, output};
+use super::{Answer, CavityFile, FINE, NO, Telling, answer_about, input, output};
 use crate::analysis;
 use crate::analysis::profile::Profile;
 use crate::report::{describe, render};
@@ -46,32 +46,15 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         target.write(&describe::envelope(&check, &profile))?;
     }
     if let Some(path) = &typed.csv {
-        let table = render::csv::stations(&check)
-            .map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
-        output::write_table(path, &table)?;
+        output::write_table(path, render::csv::stations(&check))?;
     }
     let good = check.stable && check.limits.iter().all(|limit| limit.holds);
     let status = if good { FINE } else { NO };
-    let name = typed.cavity.file.display().to_string();
-    let out = if typed.json {
-        match render::json::render("check", &name, &check) {
-            Ok(json) => json + "\n",
-            Err(error) => {
-                return Err(Answer::fault(format!(
-                    "the result does not fit into JSON: {error}"
-                )));
-            }
-        }
-    } else {
-        let mut document = describe::check(&check);
-        if typed.quiet {
-            document.keep_verdict();
-        }
-        render::terminal::render(&document)
+    let telling = Telling {
+        command: "check",
+        file: &typed.cavity.file,
+        json: typed.json,
+        quiet: typed.quiet,
     };
-    Ok(Answer {
-        out,
-        err: String::new(),
-        status,
-    })
+    answer_about(telling, &check, || describe::check(&check), status)
 }

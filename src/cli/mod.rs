@@ -145,6 +145,40 @@ fn finish<R: Serialize>(
     }
 }
 
+/// How a result about a cavity file is to be told.
+struct Telling<'a> {
+    command: &'a str,
+    file: &'a std::path::Path,
+    json: bool,
+    quiet: bool,
+}
+
+/// An answer about a cavity file, as JSON or as a document.
+fn answer_about<R: Serialize>(
+    telling: Telling<'_>,
+    result: &R,
+    describe: impl FnOnce() -> Document,
+    status: u8,
+) -> Result<Answer, Answer> {
+    let out = if telling.json {
+        let file = telling.file.display().to_string();
+        render::json::render(telling.command, &file, result)
+            .map_err(|error| Answer::fault(format!("the result does not fit into JSON: {error}")))?
+            + "\n"
+    } else {
+        let mut document = describe();
+        if telling.quiet {
+            document.keep_verdict();
+        }
+        render::terminal::render(&document)
+    };
+    Ok(Answer {
+        out,
+        err: String::new(),
+        status,
+    })
+}
+
 /// Runs the command line of this process.
 pub fn run() -> ExitCode {
     let typed = Typed::parse();

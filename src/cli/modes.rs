@@ -3,7 +3,7 @@
 use clap::Args;
 
 use super::picture::Target;
-use super::{Answer, CavityFile, FINE, NO, WRONG_INPUT, input, output};
+use super::{Answer, CavityFile, FINE, NO, Telling, WRONG_INPUT, answer_about, input, output};
 use crate::analysis::modes::{self, APART};
 use crate::cavity::{Cavity, Origin, Slot};
 use crate::report::{describe, render};
@@ -69,38 +69,16 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         target.write(&describe::modes_chart(&found))?;
     }
     if let Some(path) = &typed.csv {
-        let table = render::csv::modes(&found)
-            .map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
-        output::write_whole(path, &table).map_err(|error| {
-            let path = path.display().to_string();
-            Answer::wrong(format!(
-                "error: cannot write the table {}: {error}\n",
-                path.escape_debug()
-            ))
-        })?;
+        output::write_table(path, render::csv::modes(&found))?;
     }
-    let name = typed.cavity.file.display().to_string();
-    let out = if typed.json {
-        match render::json::render("modes", &name, &found) {
-            Ok(json) => json + "\n",
-            Err(error) => {
-                return Err(Answer::fault(format!(
-                    "the result does not fit into JSON: {error}"
-                )));
-            }
-        }
-    } else {
-        let mut document = describe::modes(&found);
-        if typed.quiet {
-            document.keep_verdict();
-        }
-        render::terminal::render(&document)
+    let telling = Telling {
+        command: "modes",
+        file: &typed.cavity.file,
+        json: typed.json,
+        quiet: typed.quiet,
     };
-    Ok(Answer {
-        out,
-        err: String::new(),
-        status: if found.no_answer.is_none() { FINE } else { NO },
-    })
+    let status = if found.no_answer.is_none() { FINE } else { NO };
+    answer_about(telling, &found, || describe::modes(&found), status)
 }
 
 /// The quantity of an address typed behind `--free`.

@@ -30,8 +30,10 @@ pub(super) fn write_whole(path: &Path, bytes: &[u8]) -> std::io::Result<()> {
 }
 
 /// Writes a table, or says why that cannot be done.
-pub(super) fn write_table(path: &Path, bytes: &[u8]) -> Result<(), Answer> {
-    write_whole(path, bytes).map_err(|error| {
+pub(super) fn write_table(path: &Path, table: Result<Vec<u8>, csv::Error>) -> Result<(), Answer> {
+    let table =
+        table.map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
+    write_whole(path, &table).map_err(|error| {
         let path = path.display().to_string();
         Answer::wrong(format!(
             "error: cannot write the table {}: {error}\n",

@@ -5,7 +5,7 @@ use clap::Args;
 use super::input::CavityText;
 use super::picture::Target;
 use super::vary;
-use super::{Answer, CavityFile, FINE, NO, input, output};
+use super::{Answer, CavityFile, FINE, NO, Telling, answer_about, input, output};
 use crate::cavity::{Cavity, Measure};
 use crate::report::{describe, render};
 use crate::study::sweep::{self, MOST_POINTS, MOST_VALUES, Options, SweepError};
@@ -100,27 +100,16 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         target.write(&describe::sweep_chart(&sweep))?;
     }
     if let Some(path) = &typed.csv {
-        let table = render::csv::sweep(&sweep)
-            .map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
-        output::write_table(path, &table)?;
+        output::write_table(path, render::csv::sweep(&sweep))?;
     }
-    let out = if typed.json {
-        let name = typed.cavity.file.display().to_string();
-        render::json::render("sweep", &name, &sweep)
-            .map_err(|error| Answer::fault(format!("the result does not fit into JSON: {error}")))?
-            + "\n"
-    } else {
-        let mut document = describe::sweep(&sweep);
-        if typed.quiet {
-            document.keep_verdict();
-        }
-        render::terminal::render(&document)
+    let telling = Telling {
+        command: "sweep",
+        file: &typed.cavity.file,
+        json: typed.json,
+        quiet: typed.quiet,
     };
-    Ok(Answer {
-        out,
-        err: String::new(),
-        status: if sweep.has_stable { FINE } else { NO },
-    })
+    let status = if sweep.has_stable { FINE } else { NO };
+    answer_about(telling, &sweep, || describe::sweep(&sweep), status)
 }
 
 /// Margin and what the file's limits are about.

@@ -4,7 +4,7 @@ use clap::Args;
 
 use super::picture::Target;
 use super::progress::Progress;
-use super::{Answer, CavityFile, FINE, NO, input, output};
+use super::{Answer, CavityFile, FINE, NO, Telling, answer_about, input, output};
 use crate::quantity::Kind;
 use crate::report::{describe, render};
 use crate::study::tolerance::{self, MOST_SAMPLES, Nothing, Options, Stage};
@@ -115,29 +115,17 @@ fn answer(typed: &Typed) -> Result<Answer, Answer> {
         target.write(&describe::tolerance_chart(&found))?;
     }
     if let Some(path) = &typed.csv {
-        let table = render::csv::contributions(&found)
-            .map_err(|error| Answer::fault(format!("the table cannot be written: {error}")))?;
-        output::write_table(path, &table)?;
+        output::write_table(path, render::csv::contributions(&found))?;
     }
     let reached = options.wanted.is_none_or(|wanted| found.passing >= wanted);
     let status = if reached { FINE } else { NO };
-    let file = typed.cavity.file.display().to_string();
-    let out = if typed.json {
-        render::json::render("tolerance", &file, &found)
-            .map_err(|error| Answer::fault(format!("the result does not fit into JSON: {error}")))?
-            + "\n"
-    } else {
-        let mut document = describe::tolerance(&found);
-        if typed.quiet {
-            document.keep_verdict();
-        }
-        render::terminal::render(&document)
+    let telling = Telling {
+        command: "tolerance",
+        file: &typed.cavity.file,
+        json: typed.json,
+        quiet: typed.quiet,
     };
-    Ok(Answer {
-        out,
-        err: String::new(),
-        status,
-    })
+    answer_about(telling, &found, || describe::tolerance(&found), status)
 }
 
 fn name(stage: Stage) -> &'static str {

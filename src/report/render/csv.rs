@@ -31,9 +31,7 @@ pub fn contributions(found: &Tolerance) -> Result<Vec<u8>, csv::Error> {
     for contribution in &found.contributions {
         table.serialize(contribution)?;
     }
-    table
-        .into_inner()
-        .map_err(|error| error.into_error().into())
+    finished(table)
 }
 
 /// The stations of a check; a value that does not exist is an empty field.
@@ -43,7 +41,6 @@ pub fn contributions(found: &Tolerance) -> Result<Vec<u8>, csv::Error> {
 pub fn stations(check: &Check) -> Result<Vec<u8>, csv::Error> {
     let mut table = csv::Writer::from_writer(Vec::new());
     table.write_record(STATIONS)?;
-    let number = |x: Option<f64>| x.map_or(String::new(), |x| format!("{x:?}"));
     let spot = |spot: Option<Spot>| number(spot.map(|spot| spot.spot_m));
     let curvature = |spot: Option<Spot>| number(spot.map(|spot| spot.curvature_per_m));
     for station in &check.stations {
@@ -62,9 +59,7 @@ pub fn stations(check: &Check) -> Result<Vec<u8>, csv::Error> {
             number(station.clip_loss),
         ])?;
     }
-    table
-        .into_inner()
-        .map_err(|error| error.into_error().into())
+    finished(table)
 }
 
 /// The points of a sweep, one a row; a value that does not exist is an empty field.
@@ -75,7 +70,6 @@ pub fn stations(check: &Check) -> Result<Vec<u8>, csv::Error> {
 /// Those of [`stations`].
 pub fn sweep(sweep: &Sweep) -> Result<Vec<u8>, csv::Error> {
     let mut table = csv::Writer::from_writer(Vec::new());
-    let number = |x: Option<f64>| x.map_or(String::new(), |x| format!("{x:?}"));
     let quantities = sweep
         .vary
         .iter()
@@ -104,9 +98,7 @@ pub fn sweep(sweep: &Sweep) -> Result<Vec<u8>, csv::Error> {
             .map(|(_, column)| number(column.values.get(point).copied().flatten()));
         table.write_record(quantities.chain(measures))?;
     }
-    table
-        .into_inner()
-        .map_err(|error| error.into_error().into())
+    finished(table)
 }
 
 const MODES: [&str; 8] = [
@@ -127,7 +119,6 @@ const MODES: [&str; 8] = [
 pub fn modes(modes: &Modes) -> Result<Vec<u8>, csv::Error> {
     let mut table = csv::Writer::from_writer(Vec::new());
     table.write_record(MODES)?;
-    let number = |x: Option<f64>| x.map_or(String::new(), |x| format!("{x:?}"));
     for mode in &modes.modes {
         table.write_record([
             mode.m.to_string(),
@@ -140,6 +131,15 @@ pub fn modes(modes: &Modes) -> Result<Vec<u8>, csv::Error> {
             number(mode.content),
         ])?;
     }
+    finished(table)
+}
+
+/// A number in full; an empty field where there is none.
+fn number(x: Option<f64>) -> String {
+    x.map_or(String::new(), |x| format!("{x:?}"))
+}
+
+fn finished(table: csv::Writer<Vec<u8>>) -> Result<Vec<u8>, csv::Error> {
     table
         .into_inner()
         .map_err(|error| error.into_error().into())
